@@ -4,17 +4,16 @@ import type { RevisionView } from '#shared/types/api'
 /** What the server refused, in words: `field` names the entry it belongs to, if one does. */
 export interface Refusal { status: number, code: string, field: string | null, text: string }
 
-interface ErrorBody { statusMessage?: string, message?: string, data?: { code?: string, field?: string, help?: string } }
+interface ErrorBody { message?: string, data?: { code?: string, field?: string, help?: string } }
 
 /** Reads a failed `$fetch`; without an answer of the server it says so. */
 export function refusalOf(error: unknown): Refusal {
   const { data: body, statusCode } = error as FetchError<ErrorBody>
-  const sentences = [body?.statusMessage ?? body?.message, body?.data?.help].filter(text => text)
   return {
     status: statusCode ?? 0,
     code: body?.data?.code ?? 'no_answer',
     field: body?.data?.field ?? null,
-    text: sentences.length > 0 ? sentences.join(' ') : 'The server did not answer. Nothing was changed; try again when you are connected.',
+    text: body?.data?.help ?? body?.message ?? 'The server did not answer. Nothing was changed; try again when you are connected.',
   }
 }
 
