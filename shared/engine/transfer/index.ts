@@ -13,3 +13,17 @@ export {
   series, subtract, toCoefficients, variable,
 } from './operations'
 export { evaluateRational, logModulus } from './evaluate'
+export { analyse } from './analysis'
+export type { Analysis, Point } from './analysis'
+export { asymptotes, cornerFrequency, highSlope, lowSlope, poles, zeros } from './asymptotes'
+export type { StraightLine } from './asymptotes'
+export { gain, gainOverBand, magnitude } from './gain'
+export type { BandPoint } from './gain'
+export {
+  attenuation, attenuationOverBand, bandwidth, cutoffFrequency, passbandReference, resonance, resonanceFrequency,
+  resonancePeak, responseKind,
+} from './passband'
+export type { Attenuation, Reference, ResponseKind } from './passband'
+export { groupDelay, phase } from './phase'
+export { classify, dampingClass, dampingRatio, dominantSection, naturalFrequency, qualityFactor } from './section'
+export type { DampingClass, Section } from './section'
