@@ -17,7 +17,7 @@ const fontFaces = [
 export default defineNuxtConfig({
   modules: ['@nuxtjs/tailwindcss', '@pinia/nuxt', '@vueuse/nuxt', 'nuxt-auth-utils', '@nuxt/eslint'],
 
-  components: [{ path: '~/components', pathPrefix: true }],
+  components: [{ path: '~/components', pathPrefix: true, extensions: ['vue'] }],
   devtools: { enabled: false },
 
   app: {
@@ -34,13 +34,12 @@ export default defineNuxtConfig({
   css: [...fontFaces, 'katex/dist/katex.min.css'],
 
   runtimeConfig: {
-    /** What a visitor's address bar shows; links in e-mails and the Origin check go by it. */
-    siteUrl: 'http://127.0.0.1:3000',
     session: {
       name: 'polewright-session',
       password: '',
       sessionHeader: false,
-      cookie: { httpOnly: true, sameSite: 'lax', secure: true, path: '/' },
+      // How long a session lasts is in its row; the cookie's own age only lets it outlive the browser's window.
+      cookie: { httpOnly: true, sameSite: 'lax', secure: true, path: '/', maxAge: 7 * 24 * 60 * 60 },
     },
   },
   srcDir: '.',
@@ -81,12 +80,17 @@ export default defineNuxtConfig({
     },
   },
   telemetry: false,
-
-  // The hash figures are OWASP's for scrypt (N = 2^17, r = 8, p = 1); maxMemory must exceed 128·N·r bytes.
-  auth: {
-    loadStrategy: 'none',
-    hash: { scrypt: { cost: 2 ** 17, blockSize: 8, parallelization: 1, maxMemory: 256 * 1024 * 1024 } },
+  hooks: {
+    // Of nuxt-auth-utils only the sealed cookie is used. Its plugin would open a session, and set a cookie, for every visitor and
+    // every file; its route would show the cookie's content and drop it without ending the session's row.
+    'nitro:config': (nitro) => {
+      nitro.plugins = nitro.plugins?.filter(plugin => !plugin?.includes('nuxt-auth-utils/dist/runtime/server/plugins/ws'))
+      nitro.handlers = nitro.handlers?.filter(handler => handler.route !== '/api/_auth/session')
+    },
   },
+
+  // Who is signed in comes from GET /api/auth/session; the cookie's content is for the server alone.
+  auth: { loadStrategy: 'none' },
   eslint: { config: { stylistic: true } },
   tailwindcss: { cssPath: ['~/assets/css/main.css', { injectPosition: 'first' }], viewer: false },
 })

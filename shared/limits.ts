@@ -45,7 +45,56 @@ export const COLLABORATION_LIMITS = {
   giveUp: 20_000,
   /** Rows of the log above which it is folded into a snapshot. */
   foldAfterRows: 1000,
+  /** The same, once nobody has the document open. */
+  foldAtRestRows: 200,
 } as const
 
 /** After how long an edit that is still on its way is called *Not saved yet*. */
 export const NOT_SAVED_AFTER = 8000
+
+/** What anyone may ask without an account: so many verifications from one address in so many seconds. */
+export const VERIFICATION_LIMIT = { points: 30, duration: 60 } as const
+
+/** Requests, accounts and sessions. */
+export const LIMITS = {
+  /** A JSON body. A document never travels in one. */
+  requestBody: 1 * MEGABYTE,
+  /** An uploaded file. */
+  uploadBody: 12 * MEGABYTE,
+
+  passwordLength: { min: 12, max: 256 },
+  nameLength: 120,
+  initialsLength: 6,
+  emailLength: 191,
+  organisationNameLength: 160,
+
+  session: {
+    /** Ended when unused for this long. */
+    idle: 12 * 60 * 60 * 1000,
+    /** Ended this long after signing in, used or not. */
+    absolute: 7 * 24 * 60 * 60 * 1000,
+    /** How old `last_seen_at` may get before it is written again. */
+    seenResolution: 60 * 1000,
+  },
+
+  links: {
+    invitation: 7 * 24 * 60 * 60 * 1000,
+    reset: 60 * 60 * 1000,
+    /** Password resets asked for one account within an hour. */
+    resetsPerHour: 3,
+  },
+
+  signIn: {
+    window: 15 * 60 * 1000,
+    /** Wrong passwords from one address for one account before each further try has to wait, doubling. */
+    pairFree: 5,
+    pairLongest: 5 * 60 * 1000,
+    /** The same from all addresses together, and from one address for all accounts. */
+    accountFree: 50,
+    accountWait: 10 * 1000,
+    addressFree: 100,
+    addressWait: 30 * 1000,
+  },
+
+  passwordHashing: { atOnce: 2, waiting: 24 },
+} as const

@@ -1,0 +1,5 @@
+import { linkTokenParams } from '#shared/schemas/auth'
+import { readLink } from '../../commands/people/passwords'
+
+/** Public: whoever holds the link sees whom it is for. */
+export default defineEventHandler(async event => readLink('invitation', queryOf(event, linkTokenParams).token))

@@ -1,0 +1,12 @@
+import { mayManagePeople } from '#shared/policies/people'
+import { idParams, organisationSchema } from '#shared/schemas/people'
+import { renameOrganisation } from '../../commands/people/organisations'
+
+export default defineEventHandler(async (event) => {
+  const actor = await requireActor(event)
+  enforce(mayManagePeople(actor))
+  const { id } = paramsOf(event, idParams)
+  const { name } = await bodyOf(event, organisationSchema)
+  await renameOrganisation(id, name)
+  return clientView(id)
+})

@@ -1,0 +1,8 @@
+import { mayManagePeople } from '#shared/policies/people'
+
+/** The firm's clients. */
+export default defineEventHandler(async (event) => {
+  const actor = await requireActor(event)
+  enforce(mayManagePeople(actor))
+  return clientViews()
+})

@@ -1,0 +1,12 @@
+import { mayManagePeople } from '#shared/policies/people'
+import { organisationSchema } from '#shared/schemas/people'
+import { createOrganisation } from '../../commands/people/organisations'
+
+export default defineEventHandler(async (event) => {
+  const actor = await requireActor(event)
+  enforce(mayManagePeople(actor))
+  const { name } = await bodyOf(event, organisationSchema)
+  const id = await createOrganisation(name)
+  setResponseStatus(event, 201)
+  return clientView(id)
+})
