@@ -1,25 +1,7 @@
-/**
- * Reading a sheet's document: text of a line, requirements by number, holds. Pure; for the head of the sheet,
- * the reader and the lists.
- */
+/** What the head of a sheet says: requirements by number, holds, lines in error. Pure. */
 import type { LineResult, RequirementBarrier, SheetResult, Verdict } from '../engine/types'
-import type { LineNode, LinesBlock, SheetBlock, SheetDocument } from './types'
-
-export const isLinesBlock = (block: SheetBlock): block is LinesBlock => block.type === 'calculation' || block.type === 'requirements'
-
-/** Text of all children of one kind; more than one after a merge are joined, since nothing typed may vanish. */
-function partText(line: LineNode, part: 'source' | 'reference'): string {
-  return (line.content ?? [])
-    .filter(child => child.type === part)
-    .map(child => (child.content ?? []).map(text => text.text).join(''))
-    .join(' ')
-}
-export const lineSource = (line: LineNode): string => partText(line, 'source')
-export const lineReference = (line: LineNode): string => partText(line, 'reference')
-
-/** Lines of the sheet in reading order. */
-export const linesInOrder = (document: SheetDocument): LineNode[] =>
-  document.content.filter(isLinesBlock).flatMap(block => block.content ?? [])
+import { holds } from './lines'
+import type { SheetDocument } from './types'
 
 export const resultsById = (results: SheetResult): Map<string, LineResult> => new Map(results.lines.map(line => [line.id, line]))
 
@@ -31,7 +13,7 @@ export interface NumberedRequirement {
   subject: string
   /** Worst case, with its unit. */
   margin: string
-  /** Where that is another number. */
+  /** Null where it is the same as the worst case. */
   nominalMargin: string | null
   at: string | null
   barrier: RequirementBarrier | null
@@ -59,12 +41,10 @@ export interface OpenHold { lineId: string, what: string, from: string }
 /** Inputs still awaited: what (the note of the line, else its name), and from whom (its reference). */
 export function openHolds(document: SheetDocument, results: SheetResult): OpenHold[] {
   const byId = resultsById(results)
-  return linesInOrder(document)
-    .filter(line => line.attrs.status === 'hold')
-    .map((line) => {
-      const result = byId.get(line.attrs.id)
-      return { lineId: line.attrs.id, what: result?.note || result?.defines || lineSource(line), from: lineReference(line) }
-    })
+  return holds(document).map(({ lineId, subject, reference }) => {
+    const result = byId.get(lineId)
+    return { lineId, what: result?.note || result?.defines || subject, from: reference }
+  })
 }
 
 /** Lines that could not be computed. */
