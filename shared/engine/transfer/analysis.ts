@@ -20,6 +20,8 @@ export interface Asymptotic {
   readonly negative: boolean
   /** ln of the coefficient's modulus. */
   readonly logSize: number
+  /** The coefficient itself, mantissa·2^exponent. */
+  readonly coefficient: Level
 }
 
 export interface Analysis {
@@ -59,14 +61,14 @@ function analyseAfresh(r: Rational): Analysis {
   return {
     zeros: r.origin > 0 ? [...origin, ...zeros] : zeros,
     poles: r.origin < 0 ? [...origin, ...poles] : poles,
-    low: { order: r.origin, negative: lowest.mantissa < 0, logSize: logSize(lowest) },
-    high: { order: r.origin + order, negative: highest.mantissa < 0, logSize: logSize(highest) },
+    low: { order: r.origin, negative: lowest.mantissa < 0, logSize: logSize(lowest), coefficient: lowest },
+    high: { order: r.origin + order, negative: highest.mantissa < 0, logSize: logSize(highest), coefficient: highest },
     corner: order === 0 ? undefined : rootOfRatio(lowest, highest, order),
     warnings,
   }
 }
 
-interface Level { mantissa: number, exponent: number }
+export interface Level { readonly mantissa: number, readonly exponent: number }
 
 /** gain·∏ of one end coefficient of each factor, its exponent apart. */
 function scaledGain(r: Rational, end: (coefficients: readonly number[]) => number): Level {

@@ -67,15 +67,30 @@ export function evaluateScaled(r: Rational, re: number, im: number): Scaled {
  * @returns the value in SI units; `{ re: Infinity, im: 0 }` at a pole, NaN for a refused function
  */
 export function evaluateRational(r: Rational, re: number, im: number): Complex {
-  const v = evaluateScaled(r, re, im)
-  if (v.exponent === 0) return { re: v.re, im: v.im }
-  const half = powerOfTwo(Math.trunc(v.exponent / 2))
-  const rest = powerOfTwo(v.exponent - Math.trunc(v.exponent / 2))
-  return { re: v.re * half * rest, im: v.im * half * rest }
+  return unscaled(evaluateScaled(r, re, im))
 }
 
 /** ln|r(iω)|: −∞ at a zero on the axis, +∞ at a pole. */
 export function logModulus(r: Rational, omega: number): number {
   const v = evaluateScaled(r, 0, omega)
   return ln(hypot(v.re, v.im)) + v.exponent * LN2
+}
+
+/** lead·∏above/∏below, without overflow on the way. */
+export function ratioOfProducts(
+  lead: { mantissa: number, exponent: number }, above: readonly Complex[], below: readonly Complex[],
+): Complex {
+  let top: Scaled = { re: lead.mantissa, im: 0, exponent: lead.exponent }
+  for (const z of above) top = times(top, z, 1)
+  let bottom: Scaled = { re: 1, im: 0, exponent: 0 }
+  for (const z of below) bottom = times(bottom, z, 1)
+  const quotient = divideComplex(top, bottom)
+  return unscaled({ re: quotient.re, im: quotient.im, exponent: top.exponent - bottom.exponent })
+}
+
+function unscaled(v: Scaled): Complex {
+  if (v.exponent === 0) return { re: v.re, im: v.im }
+  const half = powerOfTwo(Math.trunc(v.exponent / 2))
+  const rest = powerOfTwo(v.exponent - Math.trunc(v.exponent / 2))
+  return { re: v.re * half * rest, im: v.im * half * rest }
 }

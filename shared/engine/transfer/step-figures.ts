@@ -1,0 +1,196 @@
+/** Overshoot, rise and settling of the step response, from the response itself and not its envelope. */
+import { rootBetween } from '../numeric/bracket'
+import { EPSILON } from '../numeric/math'
+import type { Analysis } from './analysis'
+import { isStable } from './analysis'
+import { lifetime } from './cascade'
+import { figureOf } from './figure'
+import type { Outcome, Refusal } from './outcome'
+import { found, refuse } from './outcome'
+import type { Rational } from './rational'
+import type { Sample, TimeFunction, Walker } from './time-function'
+import { finalValue, refuseImproper, stepFunction } from './time-response'
+
+/** Steps of a search; beyond it the figure is refused rather than guessed. */
+const STEPS = 400_000
+
+/** Response relative to its final value: 1 is settled. */
+interface Settled { readonly y: TimeFunction, readonly final: number, readonly until: number }
+
+function settledFigure<T>(r: Rational, figure: (s: Settled) => Outcome<T>): Outcome<T> {
+  return figureOf(r, (a) => {
+    const refused = refuseUnsettled(r, a)
+    if (refused) return refused
+    return figure({ y: stepFunction(r), final: finalValue(r), until: a.poles.length === 0 ? 0 : lifetime(a.poles) })
+  })
+}
+
+function refuseUnsettled(r: Rational, a: Analysis): Refusal | undefined {
+  const improper = refuseImproper(a)
+  if (improper) return improper
+  if (!isStable(a)) {
+    const growing = a.poles.some(p => p.re > 0)
+    return growing
+      ? refuse('unstable', 'A pole lies in the right half-plane: the step response grows without limit.')
+      : refuse('not-settling', 'A pole lies on the axis: the step response does not settle.', 'Put in the losses that damp it.')
+  }
+  if (r.origin > 0) {
+    return refuse('no-final-value', 'The step response returns to zero, so it has no final value to be compared with.', 'Use stepResponse(H, t).')
+  }
+  return undefined
+}
+
+function unresolved(): Refusal {
+  return refuse('not-resolved', 'The response is too stiff to be followed: its slowest part outlasts its fastest by too much.')
+}
+
+export interface StepPeak {
+  /** s */
+  readonly time: number
+  /** In units of H. */
+  readonly value: number
+  /** Part of the final value, 0.05 meaning 5 %. */
+  readonly overshoot: number
+}
+
+/** Largest value of the step response beyond its final value; `undefined` where there is none. */
+export function stepPeak(r: Rational): Outcome<StepPeak | undefined> {
+  return settledFigure(r, (s) => {
+    const best = highest(s)
+    if (best === 'unresolved') return unresolved()
+    return found(best.excess > 0 ? { time: best.time, value: (1 + best.excess) * s.final, overshoot: best.excess } : undefined)
+  })
+}
+
+/** Largest excess over the final value, as a part of it: 0 where there is none. */
+export function overshoot(r: Rational): Outcome<number> {
+  const peak = stepPeak(r)
+  return peak.ok ? found(peak.value?.overshoot ?? 0, peak.warnings) : peak
+}
+
+interface Highest { time: number, excess: number }
+
+/** Rounding of a response that only approaches its final value is no overshoot. */
+const EXCESS = 1e-12
+
+function highest(s: Settled): Highest | 'unresolved' {
+  const walker = s.y.walk()
+  let best: Highest = { time: 0, excess: relative(s, walker.here).value }
+  for (let count = 0; walker.time < s.until; count++) {
+    if (count > STEPS) return 'unresolved'
+    if (s.y.envelope && s.y.envelope(walker.time) <= best.excess * Math.abs(s.final)) break
+    const by = s.y.stepAt(walker.time)
+    const top = topWithin(s, walker, by)
+    if (top && top.excess > best.excess) best = top
+    walker.advance(by)
+  }
+  return best.excess > EXCESS ? best : { time: best.time, excess: 0 }
+}
+
+/** Deviation from the final value as a part of it, and its slope. */
+function relative(s: Settled, sample: Sample): Sample {
+  return { value: sample.value / s.final - 1, slope: sample.slope / s.final }
+}
+
+/** The maximum inside the next step, if the slope changes from rising to falling there. */
+function topWithin(s: Settled, walker: Walker, by: number): Highest | undefined {
+  if (!(relative(s, walker.here).slope > 0)) return undefined
+  const slope = (ahead: number) => relative(s, ahead === 0 ? walker.here : walker.look(ahead)).slope
+  if (!(slope(by) <= 0)) return undefined
+  const ahead = rootBetween(slope, 0, by)
+  return ahead === undefined ? undefined : { time: walker.time + ahead, excess: relative(s, walker.look(ahead)).value }
+}
+
+/** From the first crossing of 10 % to the first of 90 % of the final value, s. 0 where the response jumps past both. */
+export function riseTime(r: Rational): Outcome<number> {
+  return settledFigure(r, (s) => {
+    const from = firstReach(s, 0.1)
+    const to = firstReach(s, 0.9)
+    return from === undefined || to === undefined ? unresolved() : found(to - from)
+  })
+}
+
+/** When the response first reaches a part of its final value, s. */
+export function reachTime(r: Rational, part: number): Outcome<number> {
+  return settledFigure(r, (s) => {
+    const time = firstReach(s, part)
+    return time === undefined ? unresolved() : found(time)
+  })
+}
+
+function firstReach(s: Settled, part: number): number | undefined {
+  const walker = s.y.walk()
+  const level = part - 1
+  const short = (sample: Sample) => relative(s, sample).value - level
+  if (short(walker.here) >= 0) return 0
+  for (let count = 0; count <= STEPS && walker.time <= s.until; count++) {
+    const by = s.y.stepAt(walker.time)
+    const top = topWithin(s, walker, by)
+    const passed = short(walker.look(by)) >= 0 ? by : top && top.excess >= level ? top.time - walker.time : undefined
+    if (passed !== undefined) {
+      const ahead = rootBetween(x => short(x === 0 ? walker.here : walker.look(x)), 0, passed)
+      return ahead === undefined ? undefined : walker.time + ahead
+    }
+    walker.advance(by)
+  }
+  return undefined
+}
+
+/**
+ * The last instant at which the response is outside the band about its final value, s. 0 where it
+ * never is.
+ * @param band part of the final value: 0.02 for 2 %
+ */
+export function settlingTime(r: Rational, band: number): Outcome<number> {
+  if (!(band > 0 && band < Infinity)) return refuse('band-range', 'A settling band must be greater than zero.')
+  return settledFigure(r, (s) => {
+    const last = s.y.envelope && s.y.slopeEnvelope ? lastFromEnvelope(s, band) : lastByWalk(s, band)
+    return last === undefined ? unresolved() : found(last)
+  })
+}
+
+/**
+ * Backwards from where the envelope alone keeps the response within the band, by steps so short that
+ * the bound on the slope rules out a crossing within them.
+ */
+function lastFromEnvelope(s: Settled, band: number): number | undefined {
+  const limit = band * Math.abs(s.final)
+  const envelope = (t: number) => s.y.envelope!(t)
+  if (envelope(0) <= limit) return 0
+  let end = s.y.stepAt(0)
+  while (envelope(end) > limit) end *= 2
+  let time = rootBetween(t => envelope(t) - limit, 0, end) ?? end
+  for (let count = 0; count < STEPS; count++) {
+    const room = limit - Math.abs(s.y.at(time).value - s.final)
+    const farthest = Math.max(0, time - room / s.y.slopeEnvelope!(time))
+    const step = room / s.y.slopeEnvelope!(farthest)
+    if (!(step > EPSILON * time)) return time
+    if (time - step <= 0) return 0
+    time -= step
+  }
+  return undefined
+}
+
+function lastByWalk(s: Settled, band: number): number | undefined {
+  const walker = s.y.walk()
+  let last = 0
+  for (let count = 0; walker.time < s.until; count++) {
+    if (count > STEPS) return undefined
+    const by = s.y.stepAt(walker.time)
+    last = lastWithin(s, walker, by, band) ?? last
+    walker.advance(by)
+  }
+  return last
+}
+
+/** Last crossing of the band within the next step, an extremum that pokes out of it included. */
+function lastWithin(s: Settled, walker: Walker, by: number, band: number): number | undefined {
+  const sample = (ahead: number) => relative(s, ahead === 0 ? walker.here : walker.look(ahead))
+  const out = (ahead: number) => Math.abs(sample(ahead).value) - band
+  if (out(by) > 0) return walker.time + by
+  if (out(0) > 0) return walker.time + (rootBetween(out, 0, by) ?? by)
+  if (Math.sign(sample(0).slope) * Math.sign(sample(by).slope) >= 0) return undefined
+  const turn = rootBetween(x => sample(x).slope, 0, by)
+  if (turn === undefined || out(turn) <= 0) return undefined
+  return walker.time + (rootBetween(out, turn, by) ?? turn)
+}
