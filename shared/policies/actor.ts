@@ -12,7 +12,9 @@ export interface Actor {
 }
 
 export const MAY: Ability = { may: true }
-export const mayNot = (why: string): Ability => ({ may: false, why })
+
+/** `wrong_state`: it is not a matter of rights; someone else may have been first, or something is still missing. */
+export const mayNot = (why: string, code: 'not_allowed' | 'wrong_state' = 'not_allowed'): Ability => ({ may: false, why, code })
 
 export const hasRole = (actor: Actor, ...roles: Role[]): boolean => roles.some(role => actor.roles.includes(role))
 

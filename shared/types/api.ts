@@ -77,7 +77,7 @@ export interface RevisionView {
 }
 export type RevisionAbility = 'edit' | 'submit' | 'recall' | 'annotate' | 'tick' | 'return' | 'sign' | 'approve' | 'withdraw' | 'revise' | 'download' | 'reassign' | 'cancel' | 'rename'
 /** A button and a route never disagree: `why` is what the server would answer. */
-export type Ability = { may: true } | { may: false, why: string }
+export type Ability = { may: true } | { may: false, why: string, code?: 'not_allowed' | 'wrong_state' }
 
 export interface SheetSettings { significantDigits: number, paper: 'A4' | 'Letter' }
 
@@ -85,6 +85,9 @@ export interface SheetSettings { significantDigits: number, paper: 'A4' | 'Lette
 export interface SubmissionView {
   id: string, revisionId: string, hash: string, resultsHash: string, submittedAt: string
   submittedBy: PersonRef, document: SheetDocument, results: SheetResult
+  settings: SheetSettings
+  cautions: { code: string, message: string, lineId: string | null }[]
+  engine: { version: string, hash: string }
   lines: { lineId: string, hash: string, order: number, kind: 'line' | 'block' }[]
   acceptances: { lineId: string | null, what: string, reason: string, by: PersonRef }[]
 }
@@ -99,7 +102,10 @@ export interface AnnotationView {
   abilities: { reply: boolean, close: boolean, reopen: boolean }
 }
 
-/** What stands between a draft and its submission. */
+/**
+ * What stands between a draft and its submission. `mustMend`: it cannot be submitted as it is. Otherwise errors, requirements and
+ * references are mended or accepted with a reason; holds and cautions are only told.
+ */
 export interface SubmitFinding { lineId: string | null, kind: 'error' | 'requirement' | 'reference' | 'hold' | 'caution', what: string, mustMend: boolean }
 
 export interface VerificationView {
