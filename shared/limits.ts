@@ -43,6 +43,8 @@ export const COLLABORATION_LIMITS = {
   idle: 15_000,
   /** How long commits are tried again before the document is given up and its clients told to come again. */
   giveUp: 20_000,
+  /** How long a server that ends waits for the last commits. */
+  lastCommits: 5000,
   /** Rows of the log above which it is folded into a snapshot. */
   foldAfterRows: 1000,
   /** The same, once nobody has the document open. */
