@@ -85,7 +85,7 @@ export default defineNuxtConfig({
     // every file; its route would show the cookie's content and drop it without ending the session's row.
     'nitro:config': (nitro) => {
       nitro.plugins = nitro.plugins?.filter(plugin => !plugin?.includes('nuxt-auth-utils/dist/runtime/server/plugins/ws'))
-      nitro.handlers = nitro.handlers?.filter(handler => handler.route !== '/api/_auth/session')
+      nitro.handlers = nitro.handlers?.filter(handler => handler?.route !== '/api/_auth/session')
     },
   },
 

@@ -19,6 +19,8 @@ export function createConnection(url: string): Sequelize {
       decimalAsNumber: false,
       checkNumberRange: true,
       connectTimeout: 5_000,
+      // An error's words must not carry what people wrote.
+      logParam: false,
     },
     define: { underscored: true, timestamps: false, freezeTableName: true },
   })

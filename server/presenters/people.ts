@@ -1,4 +1,5 @@
-import type { DeviceView, OrganisationView, PersonView, SessionView } from '#shared/types/people'
+import type { SessionView } from '#shared/types/api'
+import type { DeviceView, OrganisationView, PersonView } from '#shared/types/people'
 import { homeOf } from '#shared/people'
 import type { Organisation, Session, User } from '../database'
 

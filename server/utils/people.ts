@@ -1,6 +1,7 @@
 /** Reading people and clients for the routes that show them. */
 import { QueryTypes } from 'sequelize'
-import type { OrganisationView, PersonView, SessionView } from '#shared/types/people'
+import type { SessionView } from '#shared/types/api'
+import type { OrganisationView, PersonView } from '#shared/types/people'
 import { Organisation, sequelize, User, UserRole } from '../database'
 import { presentOrganisation, presentPerson, presentSession } from '../presenters/people'
 import { notFound } from './errors'

@@ -1,8 +1,6 @@
 /** What the people pages read. */
 import type { PersonRef, Role } from './api'
 
-export type { SessionView } from './api'
-
 export interface PersonView extends PersonRef {
   email: string
   /** The first one decides which work list opens. */

@@ -1,13 +1,7 @@
 import { DataTypes, Model } from 'sequelize'
 import type { CreationOptional, InferAttributes, InferCreationAttributes, NonAttribute } from 'sequelize'
 import type { Role } from '#shared/types/api'
-import { sequelize } from '../connection'
-
-const id = { type: DataTypes.CHAR(26), primaryKey: true }
-const reference = { type: DataTypes.CHAR(26), allowNull: false }
-const instant = { type: DataTypes.DATE(3), allowNull: false }
-const perhaps = { type: DataTypes.DATE(3), allowNull: true }
-const createdAt = { ...instant, defaultValue: DataTypes.NOW }
+import { at, hash, id, json, key, maybeAt, maybeKey, maybeText, oneOf, table, text } from './columns'
 
 export class Organisation extends Model<InferAttributes<Organisation>, InferCreationAttributes<Organisation>> {
   declare id: string
@@ -16,11 +10,11 @@ export class Organisation extends Model<InferAttributes<Organisation>, InferCrea
   declare createdAt: CreationOptional<Date>
 }
 Organisation.init({
-  id,
-  name: { type: DataTypes.STRING(160), allowNull: false },
-  kind: { type: DataTypes.ENUM('firm', 'client'), allowNull: false },
-  createdAt,
-}, { sequelize, tableName: 'organisations' })
+  id: id(),
+  name: text(160),
+  kind: oneOf('firm', 'client'),
+  createdAt: at(),
+}, table('organisations'))
 
 /** `organisationId` is set for a client's people only; `passwordHash` is null until the invitation has been accepted. */
 export class User extends Model<InferAttributes<User>, InferCreationAttributes<User>> {
@@ -36,15 +30,15 @@ export class User extends Model<InferAttributes<User>, InferCreationAttributes<U
   declare organisation?: NonAttribute<Organisation | null>
 }
 User.init({
-  id,
-  email: { type: DataTypes.STRING(191), allowNull: false },
-  name: { type: DataTypes.STRING(120), allowNull: false },
-  initials: { type: DataTypes.STRING(6), allowNull: false },
-  passwordHash: { type: DataTypes.STRING(255), allowNull: true },
-  organisationId: { type: DataTypes.CHAR(26), allowNull: true },
-  disabledAt: perhaps,
-  createdAt,
-}, { sequelize, tableName: 'users' })
+  id: id(),
+  email: text(191),
+  name: text(120),
+  initials: text(6),
+  passwordHash: maybeText(255),
+  organisationId: maybeKey(),
+  disabledAt: maybeAt(),
+  createdAt: at(),
+}, table('users'))
 
 export class UserRole extends Model<InferAttributes<UserRole>, InferCreationAttributes<UserRole>> {
   declare userId: string
@@ -54,11 +48,11 @@ export class UserRole extends Model<InferAttributes<UserRole>, InferCreationAttr
   declare createdAt: CreationOptional<Date>
 }
 UserRole.init({
-  userId: { ...reference, primaryKey: true },
+  userId: { ...key(), primaryKey: true },
   role: { type: DataTypes.STRING(20), primaryKey: true },
   position: { type: DataTypes.TINYINT.UNSIGNED, allowNull: false },
-  createdAt,
-}, { sequelize, tableName: 'user_roles' })
+  createdAt: at(),
+}, table('user_roles'))
 
 /** A signed-in device. The sealed cookie holds nothing but the id of this row. */
 export class Session extends Model<InferAttributes<Session>, InferCreationAttributes<Session>> {
@@ -73,15 +67,15 @@ export class Session extends Model<InferAttributes<Session>, InferCreationAttrib
   declare user?: NonAttribute<User>
 }
 Session.init({
-  id,
-  userId: reference,
-  createdAt,
-  lastSeenAt: instant,
-  expiresAt: instant,
-  revokedAt: perhaps,
-  userAgent: { type: DataTypes.STRING(255), allowNull: false },
-  ip: { type: DataTypes.STRING(45), allowNull: false },
-}, { sequelize, tableName: 'sessions' })
+  id: id(),
+  userId: key(),
+  createdAt: at(),
+  lastSeenAt: at(),
+  expiresAt: at(),
+  revokedAt: maybeAt(),
+  userAgent: text(255),
+  ip: text(45),
+}, table('sessions'))
 
 export type LinkKind = 'invitation' | 'reset'
 
@@ -96,14 +90,14 @@ export class OneTimeLink extends Model<InferAttributes<OneTimeLink>, InferCreati
   declare usedAt: CreationOptional<Date | null>
 }
 OneTimeLink.init({
-  id,
-  kind: { type: DataTypes.STRING(20), allowNull: false },
-  userId: reference,
-  tokenHash: { type: DataTypes.CHAR(64), allowNull: false },
-  createdAt,
-  expiresAt: instant,
-  usedAt: perhaps,
-}, { sequelize, tableName: 'one_time_links' })
+  id: id(),
+  kind: text(20),
+  userId: key(),
+  tokenHash: hash(),
+  createdAt: at(),
+  expiresAt: at(),
+  usedAt: maybeAt(),
+}, table('one_time_links'))
 
 export class LoginAttempt extends Model<InferAttributes<LoginAttempt>, InferCreationAttributes<LoginAttempt>> {
   declare id: CreationOptional<number>
@@ -115,11 +109,11 @@ export class LoginAttempt extends Model<InferAttributes<LoginAttempt>, InferCrea
 }
 LoginAttempt.init({
   id: { type: DataTypes.BIGINT.UNSIGNED, primaryKey: true, autoIncrement: true },
-  account: { type: DataTypes.CHAR(64), allowNull: false },
-  ip: { type: DataTypes.STRING(45), allowNull: false },
+  account: hash(),
+  ip: text(45),
   succeeded: { type: DataTypes.BOOLEAN, allowNull: false },
-  createdAt,
-}, { sequelize, tableName: 'login_attempts' })
+  createdAt: at(),
+}, table('login_attempts'))
 
 export class Setting extends Model<InferAttributes<Setting>, InferCreationAttributes<Setting>> {
   declare key: string
@@ -129,10 +123,10 @@ export class Setting extends Model<InferAttributes<Setting>, InferCreationAttrib
 }
 Setting.init({
   key: { type: DataTypes.STRING(60), primaryKey: true },
-  value: { type: DataTypes.JSON, allowNull: false },
-  createdAt,
-  updatedAt: instant,
-}, { sequelize, tableName: 'settings' })
+  value: json(),
+  createdAt: at(),
+  updatedAt: at(),
+}, table('settings'))
 
 User.hasMany(UserRole, { foreignKey: 'userId', as: 'roleRows' })
 User.belongsTo(Organisation, { foreignKey: 'organisationId', as: 'organisation' })
