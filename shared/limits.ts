@@ -7,6 +7,8 @@ const MEGABYTE = 1024 * KILOBYTE
 export const COLLABORATION_LIMITS = {
   /** One socket message. An offline day comes back as one, so it is far above what typing makes. */
   frame: 4 * MEGABYTE,
+  /** Above this the socket itself closes (1009) before anything is read. */
+  payload: 8 * MEGABYTE,
   /** A document with all its history that cannot be dropped. */
   document: 16 * MEGABYTE,
   /** What one connection may have sent before the server has read its answer to the first question. */

@@ -50,6 +50,31 @@ export const CLOSE = {
 } as const
 export type CloseCode = typeof CLOSE[keyof typeof CLOSE]
 
+/**
+ * The address of the socket, `/collaboration/{revision}?epoch=N&format=F`. A page with a draft names the epoch and the
+ * document format it knows; without them it is only told of changes.
+ */
+export const socketAddressSchema = z.object({
+  revisionId: z.string().regex(/^[0-9A-HJKMNP-TV-Z]{26}$/),
+  epoch: z.coerce.number().int().positive().optional(),
+  format: z.coerce.number().int().positive().optional(),
+})
+export type SocketAddress = z.infer<typeof socketAddressSchema>
+
+const SOCKET_PATH = /^\/collaboration\/([^/]+)$/
+
+/** The parts of a socket's address; null if it is none of ours. `url` is absolute. */
+export function readSocketAddress(url: string): SocketAddress | null {
+  if (!URL.canParse(url)) return null
+  const { pathname, searchParams } = new URL(url)
+  const parsed = socketAddressSchema.safeParse({
+    revisionId: SOCKET_PATH.exec(pathname)?.[1],
+    epoch: searchParams.get('epoch') ?? undefined,
+    format: searchParams.get('format') ?? undefined,
+  })
+  return parsed.success ? parsed.data : null
+}
+
 /** A message of our own as bytes. */
 export function ownMessage(type: typeof MESSAGE_DONE, body: Done): Uint8Array
 export function ownMessage(type: typeof MESSAGE_REFUSED, body: Refused): Uint8Array
