@@ -10,9 +10,15 @@ export function useSession() {
 
   /** Asks the server; a missing or ended session is simply nobody. */
   async function refresh(): Promise<SessionView | null> {
-    session.value = await request<SessionView>('/api/auth/session').catch(() => null)
+    session.value = await request<SessionView | null>('/api/auth/session').catch(() => null) ?? null
     known.value = true
     return session.value
+  }
+
+  /** After signing in: what the server answered is the session. */
+  function enter(view: SessionView) {
+    session.value = view
+    known.value = true
   }
 
   async function signOut() {
@@ -24,5 +30,5 @@ export function useSession() {
   const user = computed(() => session.value?.user ?? null)
   const has = (role: Role) => user.value?.roles.includes(role) ?? false
 
-  return { session: readonly(session), user, known: readonly(known), has, refresh, signOut }
+  return { session: readonly(session), user, known: readonly(known), has, refresh, enter, signOut }
 }

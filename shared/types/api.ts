@@ -34,6 +34,9 @@ export interface ProjectDetail extends ProjectSummary {
   abilities: { edit: boolean, createSheet: boolean }
 }
 
+/** A standard with its edition, or a client's document with its revision, that sheets of the project cite. */
+export interface ProjectReferenceView { id: string, kind: 'standard' | 'client_document' | 'other', designation: string, title: string, edition: string }
+
 /** A row of a register, a board or a work list. */
 export interface RegisterRow {
   sheetId: string, revisionId: string

@@ -1,5 +1,5 @@
 /** Words for codes: one place, so that a page, an e-mail and the stamped sheet say the same. */
-import type { AnnotationKind, CheckLevel, IssuePurpose, Role, SignatureMeaning } from '../types/api'
+import type { AnnotationKind, CheckLevel, IssuePurpose, SignatureMeaning } from '../types/api'
 
 export const PURPOSE_WORDS: Record<IssuePurpose, string> = {
   information: 'for information',
@@ -13,13 +13,6 @@ export const CHECK_LEVEL_WORDS: Record<CheckLevel, string> = {
   1: '1 · within the team',
   2: '2 · independent',
   3: '3 · alternative calculation',
-}
-
-export const ROLE_WORDS: Record<Role, string> = {
-  engineer: 'Engineer',
-  checker: 'Checker',
-  manager: 'Manager',
-  client: 'Client',
 }
 
 export const MEANING_WORDS: Record<SignatureMeaning, string> = {
