@@ -98,3 +98,24 @@ export function decibels(ratio: number): number {
 export function degrees(radians: number): number {
   return radians * (180 / PI)
 }
+
+export function radians(angle: number): number {
+  return angle * (PI / 180)
+}
+
+/** 10^k for integer k, rounded once where |k| ≤ 22. */
+export function powerOfTen(k: number): number {
+  return k < 0 ? 1 / integerPower(10, -k) : integerPower(10, k)
+}
+
+/** Largest power of ten that is not above x > 0. */
+export function floorDecade(x: number): number {
+  const k = Math.floor(log10(x))
+  return powerOfTen(powerOfTen(k) > x ? k - 1 : k)
+}
+
+/** Smallest power of ten that is not below x > 0. */
+export function ceilDecade(x: number): number {
+  const decade = floorDecade(x)
+  return decade < x ? powerOfTen(Math.round(log10(decade)) + 1) : decade
+}

@@ -120,7 +120,8 @@ function pointsOf(factors: readonly Factor[]): Point[] {
   return points.sort((a, b) => modulus(a) - modulus(b) || a.re - b.re || b.im - a.im)
 }
 
-function toPoint(z: Complex, coefficients: readonly number[]): Point {
+/** A root of a factor, with its natural frequency and damping ratio. */
+export function toPoint(z: Complex, coefficients: readonly number[]): Point {
   if (coefficients.length === 3 && z.im !== 0) {
     const [a0, a1, a2] = coefficients as [number, number, number]
     return { re: z.re, im: z.im, ...secondOrder(a0, a1, a2) }

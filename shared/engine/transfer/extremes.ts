@@ -93,7 +93,8 @@ function finiteSides(r: Rational, from: Knot, to: Knot, level: number): [number,
 function inside(from: number, to: number, r: Rational): number {
   if (to < Infinity) return from > 0 ? (from + to) / 2 : to / 2
   if (from > 0) return 2 * from
-  return analyse(r).corner ?? analyse(r).poles.at(-1)?.omega ?? 1
+  const { corner, poles, zeros } = analyse(r)
+  return corner || poles.at(-1)?.omega || zeros.at(-1)?.omega || 1
 }
 
 /** From `start` towards an end until the modulus is on that end's side of the level. */

@@ -12,8 +12,8 @@ import { fastestRate, stepFor } from './time-function'
 /** constant + Re Σ residue·e^(pole·t); a pair of poles is held once, with its residue doubled. */
 interface Modes { readonly constant: number, readonly poles: readonly Complex[], readonly residues: readonly Complex[] }
 
-/** How far the residues may exceed the response: five of sixteen digits are given up at most. */
-const CROWDED = 1e4
+/** How far the residues may exceed the response: four of sixteen digits are given up at most. */
+const CROWDED = 1e3
 /** A mode below this part of the whole has died away. */
 const DEAD = 1e-9
 
@@ -70,13 +70,13 @@ function timeFunction(m: Modes): TimeFunction {
   const sizeAt = (k: number, time: number) => sizes[k]! * exp(m.poles[k]!.re * time)
   const bound = (weights: readonly number[], time: number) =>
     m.poles.reduce((sum, p, k) => sum + weights[k]! * exp(p.re * time), 0)
-  const slopes = sizes.map((size, k) => size * rates[k]!)
+  const curvatures = sizes.map((size, k) => size * rates[k]! * rates[k]!)
   return {
     at: time => sampleOf(m, time),
     walk: () => walker(m),
     stepAt: time => stepFor(fastestRate(m.poles, k => sizeAt(k, time) > DEAD * total)),
     envelope: time => bound(sizes, time) * (1 + 8 * EPSILON),
-    slopeEnvelope: time => bound(slopes, time) * (1 + 8 * EPSILON),
+    curvatureEnvelope: time => bound(curvatures, time) * (1 + 8 * EPSILON),
   }
 }
 

@@ -96,12 +96,36 @@ export function attenuationOverBand(r: Rational, from: number, to: number, refer
   return found({ attenuation: base.value.gain - gain, omega, reference: base.value }, band.warnings)
 }
 
+/** Half-power edges, Hz: of a low-pass its lowest, of a high-pass its highest, of a band-pass the two nearest its peak. */
+export function halfPowerEdges(r: Rational): Outcome<number[]> {
+  return figureOf(r, (a) => {
+    const kind = kindOf(a)
+    if (kind === 'low-pass') return edges([levelCrossings(r, a.low.logSize - HALF_POWER).at(0)])
+    if (kind === 'high-pass') return edges([levelCrossings(r, a.high.logSize - HALF_POWER).at(-1)])
+    if (kind === 'other') return refuse('no-passband', `This function is ${article(kind)}.`)
+    const peak = largest(r)
+    if (peak.level === Infinity) return unboundedPeak()
+    const all = levelCrossings(r, peak.level - HALF_POWER)
+    return edges([all.filter(w => w < peak.omega).at(-1), all.find(w => w > peak.omega)])
+  })
+}
+
+function edges(omegas: readonly (number | undefined)[]): Outcome<number[]> {
+  const result: number[] = []
+  for (const omega of omegas) {
+    if (omega === undefined) {
+      return refuse('no-half-power', 'The magnitude does not pass half power within the range of numbers.')
+    }
+    result.push(omega / TWO_PI)
+  }
+  return found(result)
+}
+
 /** Half-power edge of a low-pass (its lowest) or high-pass (its highest), Hz. */
 export function cutoffFrequency(r: Rational): Outcome<number> {
   return figureOf(r, (a) => {
     const kind = kindOf(a)
-    if (kind === 'low-pass') return edge(levelCrossings(r, a.low.logSize - HALF_POWER).at(0))
-    if (kind === 'high-pass') return edge(levelCrossings(r, a.high.logSize - HALF_POWER).at(-1))
+    if (kind === 'low-pass' || kind === 'high-pass') return first(halfPowerEdges(r))
     return refuse('no-cutoff', `This function is ${article(kind)}; a cut-off frequency belongs to a low-pass or high-pass.`,
       kind === 'band-pass' ? 'Use bandwidth(H) and resonanceFrequency(H).' : undefined)
   })
@@ -111,24 +135,19 @@ export function cutoffFrequency(r: Rational): Outcome<number> {
 export function bandwidth(r: Rational): Outcome<number> {
   return figureOf(r, (a) => {
     const kind = kindOf(a)
-    if (kind === 'low-pass') return edge(levelCrossings(r, a.low.logSize - HALF_POWER).at(0))
+    if (kind === 'low-pass') return first(halfPowerEdges(r))
     if (kind !== 'band-pass') {
       return refuse('no-bandwidth', `This function is ${article(kind)}; a bandwidth belongs to a low-pass or band-pass.`,
         kind === 'high-pass' ? 'Use cutoffFrequency(H).' : undefined)
     }
-    const peak = largest(r)
-    if (peak.level === Infinity) return unboundedPeak()
-    const edges = levelCrossings(r, peak.level - HALF_POWER)
-    const below = edges.filter(w => w < peak.omega).at(-1)
-    const above = edges.find(w => w > peak.omega)
-    return below === undefined || above === undefined ? edge(undefined) : edge(above - below)
+    const both = halfPowerEdges(r)
+    return both.ok ? found(both.value[1]! - both.value[0]!) : both
   })
 }
 
-function edge(omega: number | undefined): Outcome<number> {
-  return omega === undefined
-    ? refuse('no-half-power', 'The magnitude does not pass half power within the range of numbers.')
-    : found(omega / TWO_PI)
+/** Without the warnings, which the calling figure adds. */
+function first(values: Outcome<number[]>): Outcome<number> {
+  return values.ok ? found(values.value[0]!) : values
 }
 
 function article(kind: ResponseKind): string {

@@ -31,7 +31,8 @@ export function phaseAt(r: Rational, a: Analysis, omega: number): number {
   return Math.abs(turned - rough) < 0.5 ? turned : rough
 }
 
-function phaseFromRoots(a: Analysis, omega: number): number {
+/** Sum of the angles of all roots, radians. */
+export function phaseFromRoots(a: Analysis, omega: number): number {
   let sum = a.low.order * PI / 2 - (a.low.negative ? PI : 0)
   for (const z of a.zeros) sum += turn(z, omega)
   for (const p of a.poles) sum -= turn(p, omega)

@@ -144,14 +144,14 @@ function firstReach(s: Settled, part: number): number | undefined {
 export function settlingTime(r: Rational, band: number): Outcome<number> {
   if (!(band > 0 && band < Infinity)) return refuse('band-range', 'A settling band must be greater than zero.')
   return settledFigure(r, (s) => {
-    const last = s.y.envelope && s.y.slopeEnvelope ? lastFromEnvelope(s, band) : lastByWalk(s, band)
+    const last = s.y.envelope && s.y.curvatureEnvelope ? lastFromEnvelope(s, band) : lastByWalk(s, band)
     return last === undefined ? unresolved() : found(last)
   })
 }
 
 /**
  * Backwards from where the envelope alone keeps the response within the band, by steps so short that
- * the bound on the slope rules out a crossing within them.
+ * its slope and the bound on its curvature rule out a crossing within them.
  */
 function lastFromEnvelope(s: Settled, band: number): number | undefined {
   const limit = band * Math.abs(s.final)
@@ -161,14 +161,27 @@ function lastFromEnvelope(s: Settled, band: number): number | undefined {
   while (envelope(end) > limit) end *= 2
   let time = rootBetween(t => envelope(t) - limit, 0, end) ?? end
   for (let count = 0; count < STEPS; count++) {
-    const room = limit - Math.abs(s.y.at(time).value - s.final)
-    const farthest = Math.max(0, time - room / s.y.slopeEnvelope!(time))
-    const step = room / s.y.slopeEnvelope!(farthest)
+    const here = s.y.at(time)
+    const off = { value: here.value - s.final, slope: here.slope }
+    const farthest = Math.max(0, time - safeStep(off, limit, s.y.curvatureEnvelope!(time)))
+    const step = safeStep(off, limit, s.y.curvatureEnvelope!(farthest))
     if (!(step > EPSILON * time)) return time
     if (time - step <= 0) return 0
     time -= step
   }
   return undefined
+}
+
+/** How far back |value − slope·h| + curvature·h²/2 stays within the limit, on either side. */
+function safeStep(off: Sample, limit: number, curvature: number): number {
+  let least = Infinity
+  for (const sign of [1, -1]) {
+    const room = Math.max(0, limit - sign * off.value)
+    const slope = -sign * off.slope
+    const root = Math.sqrt(slope * slope + 2 * curvature * room)
+    least = Math.min(least, slope > 0 ? 2 * room / (slope + root) : (root - slope) / curvature)
+  }
+  return least
 }
 
 function lastByWalk(s: Settled, band: number): number | undefined {

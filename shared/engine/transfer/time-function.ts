@@ -22,8 +22,8 @@ export interface TimeFunction {
   stepAt(time: number): number
   /** Bound on the distance from the final value from this time on, if one is known cheaply. */
   envelope?(time: number): number
-  /** The same of the slope. */
-  slopeEnvelope?(time: number): number
+  /** The same of the second derivative. */
+  curvatureEnvelope?(time: number): number
 }
 
 /** Radians of the fastest living mode per step. */
