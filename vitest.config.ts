@@ -21,6 +21,7 @@ const plain = (name: string, test: Record<string, unknown> = {}) => ({
 /** Tests that talk to a built server on a database of their own; see tests/helpers/setup.ts. */
 const served = (name: string, test: Record<string, unknown> = {}) => plain(name, {
   globalSetup: ['tests/helpers/setup.ts'],
+  setupFiles: ['tests/helpers/environment.ts'],
   testTimeout: 30_000,
   hookTimeout: 60_000,
   ...test,

@@ -9,7 +9,7 @@ import { tmpdir, userInfo } from 'node:os'
 import { join } from 'node:path'
 import { setTimeout as delay } from 'node:timers/promises'
 import { readJson, Refusal, writePrivateJson } from './paths.mjs'
-import { endProcess, findProgram, freePort, isAlive, launch, run, succeeds } from './process.mjs'
+import { endProcess, findProgram, freePort, isAlive, launch, run, succeeds, withLock } from './process.mjs'
 
 const ACCOUNT = 'polewright'
 const MAX_SOCKET_PATH = 100
@@ -87,8 +87,11 @@ async function startServer(place, port) {
  * Starts the server of `folder`, or picks up the one that an earlier run left behind.
  * Returns `url(schema)`, `run(sql)` and `stop()`.
  */
-export async function startMariadb(folder) {
-  const place = layout(folder)
+export function startMariadb(folder) {
+  return withLock(`${folder}.lock`, () => startOrJoin(layout(folder), folder))
+}
+
+async function startOrJoin(place, folder) {
   mkdirSync(place.folder, { recursive: true, mode: 0o755 })
   const known = readJson(place.state) ?? {}
   const password = known.password ?? randomBytes(18).toString('base64url')

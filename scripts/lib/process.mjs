@@ -1,8 +1,8 @@
 /** Running other programs, and stopping them again. */
 import { spawn, spawnSync } from 'node:child_process'
-import { existsSync } from 'node:fs'
+import { existsSync, mkdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs'
 import { createServer } from 'node:net'
-import { delimiter, join } from 'node:path'
+import { delimiter, dirname, join } from 'node:path'
 import { setTimeout as delay } from 'node:timers/promises'
 import { Refusal, ROOT } from './paths.mjs'
 
@@ -48,6 +48,37 @@ export async function endProcess(pid, { signal = 'SIGTERM', patience = 20_000 } 
       return
     }
     await delay(50)
+  }
+}
+
+const ownerOf = (path) => {
+  try {
+    return Number(readFileSync(path, 'utf8'))
+  }
+  catch {
+    return 0
+  }
+}
+
+/** Runs `work` while no other process holds the lock file at `path`; a lock whose holder has died is taken over. */
+export async function withLock(path, work) {
+  mkdirSync(dirname(path), { recursive: true })
+  for (;;) {
+    try {
+      writeFileSync(path, String(process.pid), { flag: 'wx' })
+      break
+    }
+    catch (error) {
+      if (error.code !== 'EEXIST') throw error
+    }
+    if (!isAlive(ownerOf(path))) rmSync(path, { force: true })
+    else await delay(200)
+  }
+  try {
+    return await work()
+  }
+  finally {
+    rmSync(path, { force: true })
   }
 }
 
