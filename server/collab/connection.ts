@@ -45,7 +45,6 @@ export class Connection implements RoomMember {
     this.room = room
     room.members.add(this)
     this.ask(room)
-    this.send(room.presence.all())
     const early = this.takeHeld()
     for (const { bytes, frame } of early) this.handle(bytes, frame)
   }
@@ -98,7 +97,7 @@ export class Connection implements RoomMember {
       case 'answer': return this.takeAnswer(frame.update, number, room)
       case 'update': return void this.take(frame.update, number, room)
       case 'awareness': return this.takeAwareness(frame.states, room)
-      case 'queryAwareness': return this.send(room.presence.all())
+      case 'queryAwareness': return room.presence.introduce(this)
       case 'malformed': return this.refuse({ code: 'malformed', help: 'The server could not read what this page sent.' })
     }
   }

@@ -148,7 +148,6 @@ export class Rooms {
 
   /** A right has ended in this process. What follows from it is read from the database, at once. */
   revoke(revocation: Revocation): void {
-    if (revocation.kind === 'revision') this.notify(revocation.id, 'state')
     if (revocation.kind === 'session') {
       for (const standing of [...this.standings.values()]) {
         if (standing.holder.sessionId === revocation.id) standing.connection.end(CLOSE.signedOut, 'signed out')
