@@ -1,0 +1,50 @@
+/** Answers to annotations, their closing and opening again. */
+import type { Transaction } from 'sequelize'
+import type { Actor } from '#shared/policies/actor'
+import * as policies from '#shared/policies/annotations'
+import { see } from '#shared/policies/revisions'
+import type { Ability } from '#shared/types/api'
+import { Annotation, AnnotationReply } from '../../database'
+import { lockRevisionRecord, type RevisionRecord } from '../../database/queries/revisionRecord'
+import { authorise, authoriseSight } from '../../utils/authorise'
+import { notFound } from '../../utils/errors'
+import { newId } from '../../utils/ids'
+import { auditSubject } from '../revisions/transition'
+import { runCommand, type Effects } from '../run'
+
+interface ThreadWork { annotation: Annotation, record: RevisionRecord, transaction: Transaction, effects: Effects }
+
+/** Locks the annotation's revision first, as every command does. */
+async function onThread<T>(actor: Actor, annotationId: string, policy: (actor: Actor, facts: policies.AnnotationFacts) => Ability, work: (on: ThreadWork) => Promise<T>): Promise<T> {
+  const found = await Annotation.findByPk(annotationId, { attributes: ['revisionId'] })
+  if (!found) throw notFound()
+  return runCommand(async (transaction, effects) => {
+    const record = await lockRevisionRecord(found.revisionId, transaction)
+    const annotation = await Annotation.findByPk(annotationId, { transaction })
+    if (!record || !annotation) throw notFound()
+    authoriseSight(see(actor, record.facts))
+    authorise(policy(actor, { state: annotation.state, byId: annotation.byId, revision: record.facts }))
+    const result = await work({ annotation, record, transaction, effects })
+    effects.changed(record.revision.id, 'check')
+    return result
+  })
+}
+
+/** An answer by anyone but who raised it makes it answered; a further word of theirs opens it again. */
+export const replyTo = (actor: Actor, annotationId: string, text: string): Promise<void> =>
+  onThread(actor, annotationId, policies.reply, async ({ annotation, transaction }) => {
+    await AnnotationReply.create({ id: newId(), annotationId, byId: actor.id, text }, { transaction })
+    await annotation.update({ state: annotation.byId === actor.id ? 'open' : 'answered' }, { transaction })
+  })
+
+export const closeAnnotation = (actor: Actor, annotationId: string): Promise<void> =>
+  onThread(actor, annotationId, policies.close, async ({ annotation, record, transaction, effects }) => {
+    await annotation.update({ state: 'closed', closedBy: actor.id, closedAt: new Date() }, { transaction })
+    effects.audit.push({ event: 'annotation_closed', actorId: actor.id, subject: auditSubject(record), data: { annotation: annotationId, number: annotation.number } })
+  })
+
+export const reopenAnnotation = (actor: Actor, annotationId: string): Promise<void> =>
+  onThread(actor, annotationId, policies.reopen, async ({ annotation, record, transaction, effects }) => {
+    await annotation.update({ state: 'open', closedBy: null, closedAt: null }, { transaction })
+    effects.audit.push({ event: 'annotation_reopened', actorId: actor.id, subject: auditSubject(record), data: { annotation: annotationId, number: annotation.number } })
+  })
