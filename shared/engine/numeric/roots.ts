@@ -7,6 +7,8 @@ import { derivativeOfPolynomial, evaluatePolynomial, sumOfTerms, trim } from './
 import { linearRoot, quadraticRoots } from './quadratic'
 import { iterateRoots } from './simultaneous'
 
+/** A root whose real part is within its error, and below this part of its modulus, is on the axis. */
+const AXIS = 1e-12
 /** Roots further apart than this part of their modulus are never merged. */
 const WIDEST = 0.05
 
@@ -99,7 +101,9 @@ function indistinct(p: Polynomial, points: readonly Complex[], i: number, j: num
 function simpleRoot(p: Polynomial, z: Complex): Root {
   const slope = modulus(evaluatePolynomial(derivativeOfPolynomial(p), z.re, z.im))
   const size = modulus(z)
-  return { re: z.re, im: z.im, error: EPSILON * (sumOfTerms(p, size) / slope + size) }
+  const error = EPSILON * (sumOfTerms(p, size) / slope + size)
+  const onAxis = Math.abs(z.re) <= Math.min(error, AXIS * size)
+  return { re: onAxis ? 0 : z.re, im: z.im, error }
 }
 
 function meanRoot(members: readonly Complex[]): Root {

@@ -47,6 +47,7 @@ function isCrowded(m: Modes): boolean {
   if (!(sum < Infinity)) return true
   let largest = Math.abs(m.constant)
   for (const p of m.poles) {
+    if (modulus(p) === 0) continue
     for (const times of [0.3, 1, 3]) largest = Math.max(largest, Math.abs(sampleOf(m, times / modulus(p)).value))
   }
   return sum > CROWDED * largest

@@ -39,7 +39,7 @@ function timesVariable(p: Polynomial): Polynomial {
 }
 
 /** Points in an ordinary decade, and the ratio by which they close in on the frequency of a root. */
-const PER_DECADE = 24
+const PER_DECADE = 16
 const CLOSING = 1.6
 /** How far beyond the lowest and highest root to look. */
 const BEYOND = 1e3
