@@ -27,15 +27,15 @@ function blockOf(editor: Editor, target: Element): number | null {
   return pos
 }
 
-export function useSheetActiveBlock(editor: Readonly<Ref<Editor>>, wrapper: Readonly<Ref<HTMLElement | null>>) {
+export function useSheetActiveBlock(editor: Editor, wrapper: Readonly<Ref<HTMLElement | null>>) {
   const active = shallowRef<ActiveBlock | null>(null)
   let frame = 0
 
   function place(pos: number | null) {
     cancelAnimationFrame(frame)
     frame = requestAnimationFrame(() => {
-      if (editor.value.isDestroyed || !wrapper.value) return
-      const next = pos === null ? null : lowerEdge(editor.value, pos, wrapper.value)
+      if (editor.isDestroyed || !wrapper.value) return
+      const next = pos === null ? null : lowerEdge(editor, pos, wrapper.value)
       if (next?.pos !== active.value?.pos || next?.bottom !== active.value?.bottom) active.value = next
     })
   }
@@ -45,12 +45,17 @@ export function useSheetActiveBlock(editor: Readonly<Ref<Editor>>, wrapper: Read
     if (event && event.pointerType !== 'mouse') return
     const target = event?.target
     if (target instanceof Element && target.closest('.pad-insert, .insert-menu')) return
-    const hovered = target instanceof Element ? blockOf(editor.value, target) : null
+    const hovered = target instanceof Element ? blockOf(editor, target) : null
     if (event && hovered === null) return
-    const { $from } = editor.value.state.selection
-    place(hovered ?? (editor.value.state.doc.childCount === 0 ? null : $from.depth === 0 ? $from.pos : $from.before(1)))
+    const { $from } = editor.state.selection
+    place(hovered ?? (editor.state.doc.childCount === 0 ? null : $from.depth === 0 ? $from.pos : $from.before(1)))
   }
-  onBeforeUnmount(() => cancelAnimationFrame(frame))
+  const atCaret = () => follow()
+  editor.on('selectionUpdate', atCaret)
+  onBeforeUnmount(() => {
+    cancelAnimationFrame(frame)
+    editor.off('selectionUpdate', atCaret)
+  })
 
   return { active: shallowReadonly(active), follow }
 }

@@ -15,6 +15,8 @@ export interface RowState {
   requirement: number | null
   people: readonly RowPerson[]
   annotations: readonly AnnotationView[]
+  /** The reader's own caret is in this row. */
+  here: boolean
 }
 
 export interface SheetEditorHub {
@@ -24,6 +26,8 @@ export interface SheetEditorHub {
   setResults: (results: readonly LineResult[]) => void
   setPeople: (people: ReadonlyMap<string, readonly RowPerson[]>) => void
   setAnnotations: (annotations: ReadonlyMap<string, readonly AnnotationView[]>) => void
+  /** The row with the reader's own caret. */
+  standAt: (id: string | null) => void
   /** Calls `show` whenever the element comes near the screen. */
   observe: (element: HTMLElement, show: () => void) => () => void
   /** Where a row lets slips hang, by the row's id. */
@@ -78,6 +82,8 @@ export function createSheetEditorHub(typeset: SheetEditorHub['typeset']): SheetE
   let people: ReadonlyMap<string, readonly RowPerson[]> = new Map()
   let annotations: ReadonlyMap<string, readonly AnnotationView[]> = new Map()
 
+  let standing: string | null = null
+
   const tell = (ids: Iterable<string>) => {
     for (const id of new Set(ids)) listeners.get(id)?.forEach(refresh => refresh())
   }
@@ -90,6 +96,7 @@ export function createSheetEditorHub(typeset: SheetEditorHub['typeset']): SheetE
       requirement: numbers.get(id) ?? null,
       people: people.get(id) ?? NOBODY,
       annotations: annotations.get(id) ?? NOBODY,
+      here: id !== '' && id === standing,
     }),
     subscribe(id, refresh) {
       const set = listeners.get(id) ?? new Set()
@@ -117,6 +124,12 @@ export function createSheetEditorHub(typeset: SheetEditorHub['typeset']): SheetE
       const changed = changedKeys(annotations, next, alike)
       annotations = next
       tell(changed)
+    },
+    standAt(id) {
+      if (id === standing) return
+      const both = [standing, id].filter(one => one !== null)
+      standing = id
+      tell(both)
     },
     observe: visibility.observe,
     slots,

@@ -47,7 +47,6 @@ const SheetLink = Link.extend({
   autolink: true,
   linkOnPaste: true,
   defaultProtocol: 'https',
-  protocols: ['http', 'https', 'mailto'],
   isAllowedUri: address => isAllowedLink(address),
   HTMLAttributes: { rel: 'noopener noreferrer', target: '_blank', class: null },
 })

@@ -128,7 +128,7 @@ class LineView implements NodeView {
     mark(this.dom, 'data-problem', state.result && state.result.status !== 'ok' ? state.result.status : null)
     this.parts.output.replaceChildren(...outputParts(state.result))
     this.parts.tag.textContent = state.requirement ? `Req ${state.requirement}` : ''
-    showPeople(this.parts.margin, state)
+    showPeople(this.dom, this.parts.margin, state)
     this.showStatus()
     this.showProblems()
     this.typeset()

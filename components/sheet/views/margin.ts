@@ -29,8 +29,9 @@ export function linkRow(hub: SheetEditorHub, slot: HTMLElement, refresh: (state:
   }
 }
 
-/** Initials of the colleagues at a row, one under another. */
-export function showPeople(host: HTMLElement, state: RowState): void {
+/** Initials of the colleagues at a row, one under another; the row with one's own caret is marked. */
+export function showPeople(row: HTMLElement, host: HTMLElement, state: RowState): void {
+  mark(row, 'data-here', state.here ? 'true' : null)
   host.replaceChildren(...state.people.map((person) => {
     const initials = element('span', { class: 'row-person', title: `${person.name} is here` }, person.initials)
     initials.style.setProperty('--person', person.colour)

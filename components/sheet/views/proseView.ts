@@ -49,7 +49,7 @@ class ProseRow implements NodeView {
     const slot = island('row-slips')
     this.field = createReferenceField(props)
     this.dom = element('div', { class: 'row row-prose' }, margin, island('row-reference', this.field.dom), this.calculation, island('row-output'), island('row-tick'), slot)
-    this.link = linkRow(hub, slot, state => showPeople(margin, state))
+    this.link = linkRow(hub, slot, state => showPeople(this.dom, margin, state))
     this.follow()
   }
 

@@ -1,0 +1,42 @@
+/** The engine behind messages: nothing is decided here. The queue and the watch over time are in composables/useEngineQueue.ts. */
+import { createSheetEngine } from '#shared/engine'
+import type { LineResult } from '#shared/engine/types'
+import type { EngineQuestion, EngineReply } from './messages'
+
+const engine = createSheetEngine({ significantDigits: 4 })
+let sent = new Map<string, LineResult>()
+
+/** Results that are not the ones sent before; the engine hands out the same object for what did not change. */
+function changedResults(lines: readonly LineResult[]): LineResult[] {
+  const changed = lines.filter(line => sent.get(line.id) !== line)
+  sent = new Map(lines.map(line => [line.id, line]))
+  return changed
+}
+
+function answer({ call, question }: EngineQuestion) {
+  switch (call) {
+    case 'evaluate': return changedResults(engine.evaluate(question).lines)
+    case 'response': return engine.response(question)
+    case 'step': return engine.step(question)
+    case 'typeset': return latexOf(question)
+    case 'expression': return null
+    case 'cautions': return engine.cautions(question)
+  }
+}
+
+function latexOf(source: string): string | null {
+  const typeset = engine.typesetExpression(source)
+  return 'latex' in typeset ? typeset.latex : null
+}
+
+const reply = (message: EngineReply) => postMessage(message)
+
+addEventListener('message', ({ data }: MessageEvent<EngineQuestion>) => {
+  try {
+    reply({ number: data.number, ok: true, answer: answer(data) })
+  }
+  catch (error) {
+    reply({ number: data.number, ok: false, message: error instanceof Error ? error.message : 'the engine failed' })
+  }
+})
+reply({ ready: true })
