@@ -43,12 +43,15 @@ export interface Bounds {
 /** Exponents of m, kg, s, A, K, mol, cd. */
 export type DimensionVector = readonly [number, number, number, number, number, number, number]
 
+/** Whether a value of a power of time counts cycles or radians. */
+export type FrequencyMark = 'Hz' | 'rad/s'
+
 export type ResultValue =
-  | { type: 'number', si: number, dimension: DimensionVector, shown: Shown, also?: Shown, bounds?: Bounds }
-  | { type: 'complex', re: number, im: number, dimension: DimensionVector, shown: Shown }
+  | { type: 'number', si: number, dimension: DimensionVector, shown: Shown, also?: Shown, bounds?: Bounds, mark?: FrequencyMark }
+  | { type: 'complex', re: number, im: number, dimension: DimensionVector, shown: Shown, mark?: FrequencyMark }
   | { type: 'list', items: ResultValue[] }
   | { type: 'text', text: string }
-  | { type: 'level', db: number, shown: Shown, bounds?: Bounds }
+  | { type: 'level', db: number, shown: Shown, bounds?: Bounds, reference?: 'dBm' | 'dBV' | 'dBuV' }
   | { type: 'unbounded', shown: Shown }
   | { type: 'transfer', rational: boolean, order?: number, dimension: DimensionVector, summary: string[], standardForm?: string }
   | { type: 'function', parameters: string[] }
@@ -99,6 +102,8 @@ export interface LineResult {
   typeset: { formula?: string, substituted?: string, result?: string }
   /** Text after `#`, if any. */
   note?: string
+  /** What the result is counted from, where that has to be said: the reference of an attenuation. */
+  remark?: string
 }
 
 export interface SheetResult { lines: LineResult[] }

@@ -1,0 +1,208 @@
+/**
+ * Extremes over a box by search, with a fixed number of steps: all corners (up to ten variables),
+ * points along the edges and inside, then line searches from the best of them. The golden section
+ * is that of J. Kiefer, Proceedings of the American Mathematical Society 4 (1953) 502.
+ */
+import type { Variable } from '../graph/evaluation'
+import { integerPower, powerOfTwo } from '../numeric/math'
+
+export interface SearchRequest {
+  variables: readonly Variable[]
+  /** Indices of the variables to search; the others stay at the bases. */
+  open: readonly number[]
+  lowBase: readonly number[]
+  highBase: readonly number[]
+  evaluate: (values: readonly number[]) => number
+  /** Cost of one evaluation, in steps. */
+  effort: number
+}
+
+interface Budget { edgePoints: number, inside: number, starts: number, rounds: number, grid: number, golden: number }
+
+/** Cheap values are searched more finely than figures that take a thousand times as long. */
+function budgetFor(effort: number): Budget {
+  if (effort < 400) return { edgePoints: 9, inside: 128, starts: 4, rounds: 4, grid: 9, golden: 42 }
+  if (effort < 2500) return { edgePoints: 3, inside: 32, starts: 2, rounds: 2, grid: 5, golden: 24 }
+  return { edgePoints: 1, inside: 8, starts: 1, rounds: 1, grid: 3, golden: 12 }
+}
+
+const CORNERS_UP_TO = 10
+const EDGES_UP_TO = 5
+
+interface Sample { position: number[], value: number }
+
+export function searchExtremes(request: SearchRequest): { low: number, high: number } {
+  const low = searchOne(request, request.lowBase, -1)
+  const high = sameBase(request) ? searchOne(request, request.highBase, 1, low.samples) : searchOne(request, request.highBase, 1)
+  return { low: low.best, high: high.best }
+}
+
+function sameBase({ lowBase, highBase }: SearchRequest): boolean {
+  return lowBase.every((value, i) => value === highBase[i])
+}
+
+function searchOne(request: SearchRequest, base: readonly number[], sense: 1 | -1, known?: Sample[]): { best: number, samples: Sample[] } {
+  const budget = budgetFor(request.effort)
+  const evaluate = (position: readonly number[]) => request.evaluate(placed(request, base, position))
+  const samples = known ?? sampleBox(request.open.length, budget, evaluate)
+  const better = (a: number, b: number) => sense * a > sense * b
+  const ranked = [...samples].sort((a, b) => sense * (b.value - a.value))
+  let best = ranked[0]?.value ?? NaN
+  for (const start of ranked.slice(0, budget.starts)) {
+    const refined = refine(start, budget, evaluate, better)
+    if (better(refined, best)) best = refined
+  }
+  return { best, samples }
+}
+
+/** Values at a position in the unit cube of the open variables. */
+function placed({ variables, open }: SearchRequest, base: readonly number[], position: readonly number[]): number[] {
+  const values = [...base]
+  open.forEach((index, k) => {
+    const variable = variables[index]
+    const t = position[k] ?? 0.5
+    if (variable) values[index] = t === 0 ? variable.low : t === 1 ? variable.high : variable.low + (variable.high - variable.low) * t
+  })
+  return values
+}
+
+function sampleBox(n: number, budget: Budget, evaluate: (position: readonly number[]) => number): Sample[] {
+  const samples: Sample[] = []
+  const add = (position: number[]) => samples.push({ position, value: evaluate(position) })
+  add(Array.from({ length: n }, () => 0.5))
+  for (const corner of cornersOf(n)) add(corner)
+  if (n <= EDGES_UP_TO) for (const position of edgesOf(n, budget.edgePoints)) add(position)
+  for (let k = 1; k <= budget.inside; k += 1) add(additive(n, k))
+  return samples
+}
+
+/** All corners, or for many variables a fixed choice of them beside those with one variable turned. */
+function cornersOf(n: number): number[][] {
+  if (n <= CORNERS_UP_TO) return Array.from({ length: powerOfTwo(n) }, (_, k) => bits(k, n))
+  const star = Array.from({ length: 2 * n + 2 }, (_, k) => Array.from({ length: n }, (__, i) => (k % 2) === 0 ? (i === k / 2 ? 1 : 0) : (i === (k - 1) / 2 ? 0 : 1)))
+  return [...star, ...Array.from({ length: 512 }, (_, k) => additive(n, k + 1).map(t => t < 0.5 ? 0 : 1))]
+}
+
+function bits(k: number, n: number): number[] {
+  return Array.from({ length: n }, (_, i) => Math.floor(k / powerOfTwo(i)) % 2)
+}
+
+/** Points along every edge of the cube. */
+function edgesOf(n: number, perEdge: number): number[][] {
+  const points: number[][] = []
+  for (let axis = 0; axis < n; axis += 1) {
+    for (let k = 0; k < powerOfTwo(n); k += 1) {
+      const corner = bits(k, n)
+      if (corner[axis] === 1) continue
+      for (let j = 1; j <= perEdge; j += 1) points.push(corner.map((t, i) => i === axis ? j / (perEdge + 1) : t))
+    }
+  }
+  return points
+}
+
+/**
+ * Evenly spread points: the additive recurrence of the generalised golden ratio, k·(1/φ, 1/φ², …)
+ * modulo 1 with φ^(n+1) = φ + 1.
+ */
+function additive(n: number, k: number): number[] {
+  const root = generalGoldenRatio(n)
+  let step = 1
+  return Array.from({ length: n }, () => {
+    step /= root
+    const x = 0.5 + k * step
+    return x - Math.floor(x)
+  })
+}
+
+function generalGoldenRatio(n: number): number {
+  let x = 1.5
+  for (let k = 0; k < 60; k += 1) {
+    const power = integerPower(x, n)
+    x -= (power * x - x - 1) / ((n + 1) * power - 1)
+  }
+  return x
+}
+
+type Better = (a: number, b: number) => boolean
+
+/** Line searches along each axis, and along the diagonals of each pair, where ridges run. */
+function refine(start: Sample, budget: Budget, evaluate: (position: readonly number[]) => number, better: Better): number {
+  const current = { position: [...start.position], value: start.value }
+  const directions = directionsOf(start.position.length)
+  for (let round = 0; round < budget.rounds; round += 1) {
+    const before = current.value
+    for (const direction of directions) lineSearch(current, direction, budget, evaluate, better)
+    if (current.value === before) break
+  }
+  return current.value
+}
+
+function directionsOf(n: number): number[][] {
+  const axes = Array.from({ length: n }, (_, i) => Array.from({ length: n }, (__, j) => i === j ? 1 : 0))
+  if (n > 6) return axes
+  const diagonals: number[][] = []
+  for (let i = 0; i < n; i += 1) {
+    for (let j = i + 1; j < n; j += 1) {
+      for (const sign of [1, -1]) diagonals.push(Array.from({ length: n }, (_, k) => k === i ? 1 : k === j ? sign : 0))
+    }
+  }
+  return [...axes, ...diagonals]
+}
+
+function lineSearch(current: Sample, direction: readonly number[], budget: Budget, evaluate: (position: readonly number[]) => number, better: Better): void {
+  const [from, to] = reach(current.position, direction)
+  if (!(to > from)) return
+  const origin = current.position
+  const at = (t: number) => origin.map((x, i) => Math.min(1, Math.max(0, x + (direction[i] ?? 0) * t)))
+  const take = (t: number, value: number) => {
+    if (better(value, current.value)) {
+      current.position = at(t)
+      current.value = value
+    }
+  }
+  const step = (to - from) / (budget.grid + 1)
+  let peak = { t: 0, value: current.value }
+  for (let k = 0; k <= budget.grid + 1; k += 1) {
+    const t = from + k * step
+    const value = evaluate(at(t))
+    take(t, value)
+    if (better(value, peak.value)) peak = { t, value }
+  }
+  golden(Math.max(from, peak.t - step), Math.min(to, peak.t + step), budget.golden, t => evaluate(at(t)), better, take)
+}
+
+/** How far the position can move along the direction within the unit cube. */
+function reach(position: readonly number[], direction: readonly number[]): [number, number] {
+  let from = -Infinity
+  let to = Infinity
+  position.forEach((x, i) => {
+    const d = direction[i] ?? 0
+    if (d === 0) return
+    const ends = d > 0 ? [-x / d, (1 - x) / d] : [(1 - x) / d, -x / d]
+    from = Math.max(from, ends[0] ?? from)
+    to = Math.min(to, ends[1] ?? to)
+  })
+  return [from, to]
+}
+
+const GOLDEN = 0.6180339887498949
+
+function golden(from: number, to: number, steps: number, f: (t: number) => number, better: Better, take: (t: number, value: number) => void): void {
+  let [a, b] = [from, to]
+  let [x, y] = [b - GOLDEN * (b - a), a + GOLDEN * (b - a)]
+  let [fx, fy] = [f(x), f(y)]
+  for (let k = 0; k < steps; k += 1) {
+    take(x, fx)
+    take(y, fy)
+    if (better(fx, fy)) {
+      [b, y, fy] = [y, x, fx]
+      x = b - GOLDEN * (b - a)
+      fx = f(x)
+    }
+    else {
+      [a, x, fx] = [x, y, fy]
+      y = a + GOLDEN * (b - a)
+      fy = f(y)
+    }
+  }
+}
