@@ -63,6 +63,8 @@ export interface RequirementResult {
   /** Worst-case margin, positive when met. */
   margin: Shown
   marginSi: number
+  /** What the margin is: its dimension, or a level in dB. */
+  marginIn?: { type: 'number' | 'level', dimension?: DimensionVector, mark?: FrequencyMark }
   nominalMargin: Shown
   nominalMarginSi: number
   /** The worst part of a chain or list, or the worst frequency of a band, where that says more. */

@@ -40,6 +40,7 @@ export function judge({ relations, subject, untoleranced, evaluation, digits }: 
     verdict: worst.verdict,
     margin: showScalar(margin, scale, digits),
     marginSi: storable(margin),
+    marginIn: worst.kind.type === 'level' ? { type: 'level' } : { type: 'number', dimension: worst.kind.dimension, ...(worst.kind.mark && { mark: worst.kind.mark }) },
     nominalMargin: showScalar(nominal, scale, digits),
     nominalMarginSi: storable(nominal),
     subject,
