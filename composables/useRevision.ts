@@ -26,10 +26,14 @@ export function useRevision(revisionId: string) {
   const { data, error, status, refresh } = useFetch<RevisionView>(path, { key: `revision-${revisionId}` })
   const refusal = computed(() => error.value ? refusalOf(error.value) : null)
 
-  /** Posts to `action` of this revision; rejects with the fetch error, after fetching what the revision is now. */
+  /**
+   * Posts to `action` of this revision; rejects with the fetch error, after fetching what the revision is now.
+   * Starting the next revision changes nothing on this one, so it names no version.
+   */
   async function act<T = unknown>(action: string, body: Record<string, unknown> = {}): Promise<T> {
+    const version = action === 'revise' ? {} : { version: data.value?.version }
     try {
-      return await $fetch<T>(`${path}/${action}`, { method: 'POST', body: { version: data.value?.version, ...body } })
+      return await $fetch<T>(`${path}/${action}`, { method: 'POST', body: { ...version, ...body } })
     }
     finally { await refresh() }
   }

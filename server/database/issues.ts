@@ -1,7 +1,8 @@
 /** An issue with all that a reader of it needs: what was issued, by whom it was signed, what has become of it since. */
 import { Op } from 'sequelize'
-import { Issue, Signature } from './models/signatures'
-import { Organisation } from './models/people'
+import type { RecipientView } from '#shared/types/issue'
+import { Issue, Signature, Transmittal } from './models/signatures'
+import { Organisation, User } from './models/people'
 import { Project, Sheet } from './models/projects'
 import { Revision } from './models/revisions'
 import { Submission } from './models/submissions'
@@ -63,4 +64,16 @@ export async function issueByCode(code: string): Promise<IssueFacts | null> {
 export async function issueOfRevision(revisionId: string): Promise<CompletedIssue | null> {
   const issue = await Issue.findOne({ where: { revisionId, issuedAt: { [Op.not]: null } }, order: [['createdAt', 'DESC']] })
   return isCompleted(issue) ? issue : null
+}
+
+/** To whom the issue of a revision was sent, under the name of today and the address of then. */
+export async function recipientsOf(revisionId: string): Promise<RecipientView[]> {
+  const issue = await issueOfRevision(revisionId)
+  if (!issue) return []
+  const sent = await Transmittal.findAll({ where: { issueId: issue.id }, order: [['createdAt', 'ASC'], ['email', 'ASC']] })
+  const people = await User.findAll({ where: { id: sent.map(one => one.userId) }, include: [{ model: Organisation, as: 'organisation' }] })
+  return sent.map((one) => {
+    const person = people.find(user => user.id === one.userId)
+    return { name: person?.name ?? '', email: one.email, organisation: person?.organisation?.name ?? null, at: one.createdAt.toISOString() }
+  })
 }
