@@ -1,6 +1,6 @@
 /** All roots of a polynomial with real coefficients, in conjugate pairs, multiple ones as such. */
 import type { Complex } from './complex'
-import { modulus, squareRoot } from './complex'
+import { modulus, reciprocal, squareRoot } from './complex'
 import { EPSILON, hypot, log2, powerOfTwo } from './math'
 import type { Polynomial } from './polynomial'
 import { derivativeOfPolynomial, evaluatePolynomial, sumOfTerms, trim } from './polynomial'
@@ -47,7 +47,7 @@ function rootsOfEven(p: Polynomial): Root[] {
   return nonZeroRoots(p.filter((_, k) => k % 2 === 0)).flatMap((x) => {
     const z = squareRoot(x)
     const error = x.error / (2 * modulus(z)) + EPSILON * modulus(z)
-    return [{ re: z.re, im: z.im, error }, { re: -z.re, im: -z.im, error }]
+    return [{ re: z.re, im: z.im, error }, { re: 0 - z.re, im: 0 - z.im, error }]
   })
 }
 
@@ -92,16 +92,21 @@ function indistinct(p: Polynomial, points: readonly Complex[], i: number, j: num
   const b = points[j]!
   const apart = hypot(a.re - b.re, a.im - b.im) / 2
   const centre = { re: (a.re + b.re) / 2, im: (a.im + b.im) / 2 }
-  const size = modulus(centre)
-  if (apart > WIDEST * size) return false
-  const value = evaluatePolynomial(p, centre.re, centre.im)
-  return modulus(value) <= EPSILON * sumOfTerms(p, size)
+  if (apart > WIDEST * modulus(centre)) return false
+  const [near, at] = fromNearerEnd(p, centre)
+  return modulus(evaluatePolynomial(near, at.re, at.im)) <= EPSILON * sumOfTerms(near, modulus(at))
+}
+
+/** p and z, or for |z| > 1 the reversed polynomial and 1/z, whose values stay in range. */
+function fromNearerEnd(p: Polynomial, z: Complex): [Polynomial, Complex] {
+  return modulus(z) > 1 ? [[...p].reverse(), reciprocal(z)] : [p, z]
 }
 
 function simpleRoot(p: Polynomial, z: Complex): Root {
-  const slope = modulus(evaluatePolynomial(derivativeOfPolynomial(p), z.re, z.im))
   const size = modulus(z)
-  const error = EPSILON * (sumOfTerms(p, size) / slope + size)
+  const [near, at] = fromNearerEnd(p, z)
+  const slope = modulus(at) * modulus(evaluatePolynomial(derivativeOfPolynomial(near), at.re, at.im))
+  const error = EPSILON * size * (sumOfTerms(near, modulus(at)) / slope + 1)
   const onAxis = Math.abs(z.re) <= Math.min(error, AXIS * size)
   return { re: onAxis ? 0 : z.re, im: z.im, error }
 }

@@ -14,8 +14,16 @@ export function figureOf<T>(r: Rational, figure: (a: Analysis) => Outcome<T>): O
   if (r.refused) return r.refused
   if (r.gain === 0) return refuse('zero-function', 'The transfer function is zero.')
   const a = analyse(r)
+  if (!hasFiniteRoots(a)) {
+    return refuse('roots-range', 'The poles and zeros of this function leave the range of floating-point numbers.',
+      'Keep it as a product of sections of low order instead of multiplying it out.')
+  }
   const result = figure(a)
   return result.ok ? found(result.value, [...(result.warnings ?? []), ...a.warnings]) : result
+}
+
+function hasFiniteRoots(a: Analysis): boolean {
+  return [...a.poles, ...a.zeros].every(z => Number.isFinite(z.re) && Number.isFinite(z.im))
 }
 
 export function refuseFrequency(omega: number): Refusal | undefined {
