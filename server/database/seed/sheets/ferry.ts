@@ -7,7 +7,7 @@ import { assumed, bullets, calculation, given, heading, hold, line, paragraph, r
  * input filters", IEEE APEC 1999. The limit on the output impedance is the usual half of the converter's input resistance
  * (R. D. Middlebrook, "Input filter considerations in design and application of switching regulators", IEEE IAS 1976).
  */
-export const inputFilter = sheetDocument('F-101', [
+const inputFilterWith = (resistor: string) => sheetDocument('F-101', [
   heading('1 Purpose and basis'),
   paragraph('The auxiliary converter of each charging bay draws its ripple from the 24 V battery bus at its switching frequency of 150 kHz. The filter ahead of it must hold that ripple back, and must not itself upset the converter: seen from the bus the converter is a constant load of power, whose input resistance is negative, so the output impedance of the filter has to stay well below it at every frequency.'),
   paragraph('A leg of a resistor and a large capacitor, $R_d$ and $C_d$, stands across $C_1$ and damps the filter without carrying the ripple.'),
@@ -21,7 +21,7 @@ export const inputFilter = sheetDocument('F-101', [
     given('L_1 = 4.7 uH ± 20 %', 'Maker\'s data, at 85 °C and 8 A'),
     given('C_1 = 10 uF ± 10 %', 'Film, maker\'s data'),
     given('C_d = 47 uF ± 20 %', 'Maker\'s data, end of life'),
-    line('R_d = 0.68 ohm ± 5 %', 'E24'),
+    line(`R_d = ${resistor} ohm ± 5 %`, 'E24, near the optimum below'),
   ]),
   heading('3 Corner and damping leg'),
   calculation([
@@ -31,7 +31,7 @@ export const inputFilter = sheetDocument('F-101', [
     line('R_opt = nominal(Z_0)*sqrt((2 + n)*(4 + 3*n)/(2*n^2*(4 + n))) to ohm', 'Erickson 1999, optimum of the leg'),
     line('Z_pk = nominal(Z_0)*sqrt(2*(2 + n))/n to ohm', 'Erickson 1999, peak at the optimum'),
   ]),
-  paragraph('The nearest value of the E24 series above the optimum is taken for the leg.'),
+  paragraph('The leg takes a value of the E24 series near the optimum.'),
   heading('4 Transfer of the filter'),
   calculation([
     line('Z_1(s) = s*L_1'),
@@ -58,22 +58,26 @@ export const inputFilter = sheetDocument('F-101', [
     line('margin_Z >= 12 dB # margin of impedance at the lowest supply', 'Firm\'s practice, design note 14'),
   ]),
   heading('7 Conclusion'),
-  paragraph('The filter with $R_d$ of 0.68 Ω and $C_d$ of 47 µF meets the four requirements at worst case. The leg must not be left out as an economy: without it the filter\'s impedance at resonance is bounded only by the losses of the inductor.'),
+  paragraph('The filter with the leg $R_d$ and $C_d$ meets the four requirements at worst case. The leg must not be left out as an economy: without it the filter\'s impedance at resonance is bounded only by the losses of the inductor.'),
 ])
+
+/** The first issue, with a leg above the optimum, and the one that superseded it. */
+export const inputFilterFirst = inputFilterWith('0.47')
+export const inputFilter = inputFilterWith('0.39')
 
 /** A capacitor switched onto a cable: what the control supply sees. Carries a caution. */
 export const switchOn = sheetDocument('F-102', [
   heading('1 Purpose'),
-  paragraph('The controller of the pilot relay is fed from the 48 V station supply by a cable of 40 m. When its breaker is closed the cable\'s inductance and the controller\'s input capacitor ring. The voltage at the controller has to stay below the rating of its input capacitor.'),
+  paragraph('The controller of the pilot relay is fed from the 48 V station supply by a cable of 15 m. When its breaker is closed the cable\'s inductance and the controller\'s input capacitor ring. The voltage at the controller has to stay below the rating of its input capacitor.'),
   heading('2 Inputs'),
   calculation([
     given('V_s = 54 V', 'Float voltage, NF-EL-07 rev. 1'),
     given('V_r = 100 V', 'Rated voltage of the input capacitor, maker\'s data'),
-    assumed('l = 40 m', 'Route drawing E-310, longest run'),
+    assumed('l = 15 m', 'Route drawing E-310, longest run'),
     assumed('L_m = 0.65 uH/m', 'Two cores side by side, common practice, no source'),
-    given('r_m = 12.1 mohm/m', 'IEC 60228, class 5, 1.5 mm², at 20 °C, from memory'),
-    given('C = 220 uF ± 20 %', 'Maker\'s data'),
-    hold('R_esr = 60 mohm', 'Awaited: Brandt Controls, series resistance at -10 °C'),
+    given('r_m = 7.98 mohm/m', 'IEC 60228, class 5, 2.5 mm², at 20 °C, from memory'),
+    given('C = 47 uF ± 20 %', 'Maker\'s data'),
+    hold('R_esr = 30 mohm', 'Awaited: Brandt Controls, series resistance at -10 °C'),
   ]),
   heading('3 Damping'),
   calculation([
@@ -93,7 +97,7 @@ export const switchOn = sheetDocument('F-102', [
     line('settlingTime(H, 5 %) <= 2 ms # ringing over before the controller starts', 'Brandt Controls, start-up time'),
   ]),
   heading('5 Conclusion'),
-  paragraph('The cable damps the step well enough at the resistance of copper at 20 °C. The series resistance of the capacitor in the cold is awaited.'),
+  paragraph('The ringing of the cable lifts the controller well above its supply for a moment, and stays below four fifths of the capacitor\'s rating at worst case. The capacitor\'s series resistance in the cold is awaited; a higher one damps more.'),
 ])
 
 /** Stored energy and discharge of the intermediate circuit. */
