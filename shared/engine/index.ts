@@ -18,6 +18,8 @@ import type { EngineSettings, LineResult, Problem, ResponseFigures, ResponseRequ
 
 export type * from './types'
 export type { Json } from './graph/recorded'
+export { sheetCautions } from './cautions'
+export type { CautionBlock, SheetCaution } from './cautions'
 export { recordedResults } from './graph/recorded'
 export { statedAs, unitScale } from './graph/units'
 export type { Stated, UnitScale } from './graph/units'

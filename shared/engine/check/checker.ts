@@ -145,19 +145,19 @@ export class Checker {
   }
 
   private call(node: ResolvedOf<'call'>): Term {
-    const args = node.args.map(arg => this.compile(arg))
-    const builtin = findBuiltin(node.name)
-    if (node.name === 'between') throw fault('between-place', '`between` stands at the top of a definition.', 'Write `name = between(nominal, low, high)` on a line of its own.', node.at)
+    const { name, at } = node
+    if (name === 'between') throw fault('between-place', '`between` stands at the top of a definition.', 'Write `name = between(nominal, low, high)` on a line of its own.', at)
+    const builtin = findBuiltin(name)
     if (builtin) {
       const [fewest, most] = builtin.arity
-      if (args.length < fewest || args.length > most) throw wrongCount(node, builtin.usage)
-      return { ...builtin.check({ name: node.name, args, at: node.at, context: this.context }), at: node.at }
+      if (node.args.length < fewest || node.args.length > most) throw wrongCount(node, builtin.usage)
+      const args = node.args.map(arg => this.compile(arg))
+      return { ...builtin.check({ name, args, at, context: this.context }), at }
     }
-    const local = this.locals.get(node.name)
-    if (local) throw notFunction(node)
-    const entity = this.entity(node.name, node.nameAt)
+    if (this.locals.has(name)) throw notFunction(node)
+    const entity = this.entity(name, node.nameAt)
     if (entity.type === 'value' || entity.type === 'failed') throw notFunction(node)
-    return { ...called(node, entity, args, this.context), at: node.at }
+    return { ...called(node, entity, node.args.map(arg => this.compile(arg)), this.context), at }
   }
 }
 

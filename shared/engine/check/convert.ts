@@ -63,7 +63,8 @@ function mismatch(kind: NumberKind, unit: UnitProduct, unitAt: SourceRange) {
 
 function displayIn(unit: UnitProduct): Display {
   const [head] = unit.factors
-  const free = unit.factors.length === 1 && head?.power === 1 && head.unit.prefixable && !isPeculiar(unit)
+  const alone = unit.factors.length === 1 || unit.mark === 'rad/s'
+  const free = alone && head?.power === 1 && head.unit.prefixable && !isPeculiar(unit)
   return { unit, fixed: !free }
 }
 

@@ -18,6 +18,8 @@ interface Kept {
   /** What each word of the line meant, and whether its own name was free. */
   context: string
   computed: Computed
+  /** The same object from one evaluation to the next while nothing changes. */
+  result: LineResult
   version: number
 }
 
@@ -80,14 +82,14 @@ export class Sheet {
     const kept = reusable ? before : this.anew(id, source, context, parsed, index)
     const name = this.nameAt(parsed, source)
     if (kept.computed.entity && name !== undefined) this.names.set(name, { entity: kept.computed.entity, version: kept.version, line: index + 1 })
-    return { id, ...kept.computed.result }
+    return kept.result
   }
 
   private anew(id: string, source: string, context: string, parsed: ParsedLine | Fault, index: number): Kept {
     this.versions += 1
     this.recomputed += 1
     const computed = index < LIMITS.lines ? this.compute(parsed, source, index) : computedFault(fault('sheet-too-long', `A sheet holds at most ${LIMITS.lines} lines.`, 'Split it into several sheets.'))
-    const kept = { source, digits: this.digits, context, computed, version: this.versions }
+    const kept = { source, digits: this.digits, context, computed, result: { id, ...computed.result }, version: this.versions }
     this.kept.set(id, kept)
     return kept
   }
