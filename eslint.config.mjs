@@ -13,7 +13,7 @@ const impure = [
 ]
 
 export default withNuxt(
-  { ignores: ['.data/**', '.test/**', '.bench/**', '**/*.md'] },
+  { ignores: ['.build/**', '.data/**', '.test/**', '.bench/**', '**/*.md'] },
   {
     name: 'polewright/all',
     files: ['**/*.{ts,mts,mjs,vue}'],

@@ -44,7 +44,7 @@ export default defineNuxtConfig({
   },
   srcDir: '.',
   buildDir,
-  ignore: ['tests/**', 'scripts/**', 'docs/**', '.data/**', '.test/**', '.bench/**'],
+  ignore: ['tests/**', 'scripts/**', 'docs/**', '.build/**', '.data/**', '.test/**', '.bench/**'],
   compatibilityDate: '2026-04-01',
   nitro: {
     experimental: { websocket: true },

@@ -47,6 +47,7 @@ export default defineConfig({
       plain('engine'),
       served('api'),
       served('collab'),
+      served('pdf', { testTimeout: 120_000 }),
       served('e2e', { testTimeout: 240_000, hookTimeout: 120_000, fileParallelism: false }),
       ...components,
     ],

@@ -30,13 +30,22 @@ export function sourceHash() {
   return hash.digest('hex')
 }
 
+/** A failed build's words without the table of what it had made. */
+function runQuietly(command, args, options) {
+  try {
+    return run(command, args, { ...options, quiet: true })
+  }
+  catch (error) {
+    throw error instanceof Refusal ? new Refusal(error.message.split('\n').filter(line => !/\d kB( │|$)/.test(line)).slice(0, 80).join('\n')) : error
+  }
+}
+
 function build({ output, buildDir, entry, stamp }) {
   const source = sourceHash()
   if (existsSync(entry) && readJson(stamp)?.source === source) return
   console.log('Building …')
   rmSync(stamp, { force: true })
-  const shown = run(process.execPath, [join(ROOT, 'node_modules/nuxt/bin/nuxt.mjs'), 'build'], {
-    quiet: true,
+  const shown = runQuietly(process.execPath, [join(ROOT, 'node_modules/nuxt/bin/nuxt.mjs'), 'build'], {
     env: { ...process.env, NODE_ENV: 'production', NUXT_BUILD_DIR: buildDir, NITRO_OUTPUT_DIR: output, NUXT_TELEMETRY_DISABLED: '1' },
   })
   if (!existsSync(entry)) throw new Refusal(`The build left no server:\n${shown}`)
