@@ -7,7 +7,7 @@ import { ZERO, complex, modulus, scale, subtract } from '../numeric/complex'
 import type { Triangular } from '../numeric/triangular'
 import { exponentialOf, triangular } from '../numeric/triangular'
 import { ratioOfProducts } from './evaluate'
-import type { Sample, TimeFunction, Walker } from './time-function'
+import type { Place, Sample, TimeFunction } from './time-function'
 import { fastestRate, stepFor } from './time-function'
 
 /** x′ = A·x, y = c·x, x(0) = start. */
@@ -33,7 +33,7 @@ export function cascade(
   const { length } = poles
   return {
     at: time => sampleOf(chain, transported(exponentialOf(chain.matrix, time), chain.start)),
-    walk: () => walker(chain),
+    start: () => placeAt(chain, new Map(), 0, chain.start),
     // A mode met n times over grows as t^(n−1) before it dies.
     stepAt: time => stepFor(fastestRate(poles, k => -poles[k]!.re * time < LIFETIMES + 3 * length)),
   }
@@ -126,24 +126,16 @@ function realProduct(a: readonly Complex[], b: readonly Complex[]): number {
   return sum
 }
 
-function walker(chain: Chain): Walker {
-  let time = 0
-  let state = chain.start
-  let here = sampleOf(chain, state)
-  const kept = new Map<number, Triangular>()
-  const over = (by: number): Triangular => {
-    const known = kept.get(by) ?? exponentialOf(chain.matrix, by)
-    kept.set(by, known)
-    return known
-  }
+/** Steps of equal length share one matrix exponential. */
+function placeAt(chain: Chain, kept: Map<number, Triangular>, time: number, state: readonly Complex[]): Place {
   return {
-    get time() { return time },
-    get here() { return here },
+    time,
+    here: sampleOf(chain, state),
     look: ahead => sampleOf(chain, transported(kept.get(ahead) ?? exponentialOf(chain.matrix, ahead), state)),
-    advance(by) {
-      time += by
-      state = transported(over(by), state)
-      here = sampleOf(chain, state)
+    next(by) {
+      const over = kept.get(by) ?? exponentialOf(chain.matrix, by)
+      kept.set(by, over)
+      return placeAt(chain, kept, time + by, transported(over, state))
     },
   }
 }

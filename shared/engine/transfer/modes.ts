@@ -6,7 +6,7 @@ import type { Complex } from '../numeric/complex'
 import { exponential, modulus, multiply, scale, subtract } from '../numeric/complex'
 import { EPSILON, exp } from '../numeric/math'
 import { ratioOfProducts } from './evaluate'
-import type { Sample, TimeFunction, Walker } from './time-function'
+import type { Place, Sample, TimeFunction } from './time-function'
 import { fastestRate, stepFor } from './time-function'
 
 /** constant + Re Σ residue·e^(pole·t); a pair of poles is held once, with its residue doubled. */
@@ -74,23 +74,18 @@ function timeFunction(m: Modes): TimeFunction {
   const curvatures = sizes.map((size, k) => size * rates[k]! * rates[k]!)
   return {
     at: time => sampleOf(m, time),
-    walk: () => walker(m),
+    start: () => placeAt(m, 0),
     stepAt: time => stepFor(fastestRate(m.poles, k => sizeAt(k, time) > DEAD * total)),
     envelope: time => bound(sizes, time) * (1 + 8 * EPSILON),
     curvatureEnvelope: time => bound(curvatures, time) * (1 + 8 * EPSILON),
   }
 }
 
-function walker(m: Modes): Walker {
-  let time = 0
-  let here = sampleOf(m, 0)
+function placeAt(m: Modes, time: number): Place {
   return {
-    get time() { return time },
-    get here() { return here },
+    time,
+    here: sampleOf(m, time),
     look: ahead => sampleOf(m, time + ahead),
-    advance(by) {
-      time += by
-      here = sampleOf(m, time)
-    },
+    next: by => placeAt(m, time + by),
   }
 }

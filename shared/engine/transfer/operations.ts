@@ -54,7 +54,7 @@ export function divide(a: Rational, b: Rational): Rational {
 }
 
 export function negate(a: Rational): Rational {
-  return a.refused ? a : { ...a, gain: -a.gain }
+  return a.refused || a.gain === 0 ? a : { ...a, gain: -a.gain }
 }
 
 export function subtract(a: Rational, b: Rational): Rational {

@@ -75,12 +75,12 @@ export function stepCurve(r: Rational, duration: number, points: number): Outcom
     const count = Math.max(2, Math.min(20_000, Math.floor(points)))
     const time = new Float64Array(count)
     const value = new Float64Array(count)
-    const walker = stepFunction(r).walk()
+    let place = stepFunction(r).start()
     const by = duration / (count - 1)
     for (let k = 0; k < count; k++) {
       time[k] = k * by
-      value[k] = walker.here.value
-      walker.advance(by)
+      value[k] = place.here.value
+      place = place.next(by)
     }
     if (!value.every(Number.isFinite)) {
       return refuse('response-range', 'The response grows beyond the range of numbers within this duration.', 'Shorten the duration.')

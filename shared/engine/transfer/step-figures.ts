@@ -8,7 +8,7 @@ import { figureOf } from './figure'
 import type { Outcome, Refusal } from './outcome'
 import { found, refuse } from './outcome'
 import type { Rational } from './rational'
-import type { Sample, TimeFunction, Walker } from './time-function'
+import type { Place, Sample, TimeFunction } from './time-function'
 import { finalValue, refuseImproper, stepFunction } from './time-response'
 
 /** Steps of a search; beyond it the figure is refused rather than guessed. */
@@ -74,15 +74,16 @@ interface Highest { time: number, excess: number }
 const EXCESS = 1e-12
 
 function highest(s: Settled): Highest | 'unresolved' {
-  const walker = s.y.walk()
-  let best: Highest = { time: 0, excess: relative(s, walker.here).value }
-  for (let count = 0; walker.time < s.until; count++) {
+  let place = s.y.start()
+  let best: Highest = { time: 0, excess: relative(s, place.here).value }
+  for (let count = 0; place.time < s.until; count++) {
     if (count > STEPS) return 'unresolved'
-    if (s.y.envelope && s.y.envelope(walker.time) <= best.excess * Math.abs(s.final)) break
-    const by = s.y.stepAt(walker.time)
-    const top = topWithin(s, walker, by)
+    if (s.y.envelope && s.y.envelope(place.time) <= best.excess * Math.abs(s.final)) break
+    const by = s.y.stepAt(place.time)
+    const next = place.next(by)
+    const top = topWithin(s, place, next, best.excess)
     if (top && top.excess > best.excess) best = top
-    walker.advance(by)
+    place = next
   }
   return best.excess > EXCESS ? best : { time: best.time, excess: 0 }
 }
@@ -92,13 +93,20 @@ function relative(s: Settled, sample: Sample): Sample {
   return { value: sample.value / s.final - 1, slope: sample.slope / s.final }
 }
 
-/** The maximum inside the next step, if the slope changes from rising to falling there. */
-function topWithin(s: Settled, walker: Walker, by: number): Highest | undefined {
-  if (!(relative(s, walker.here).slope > 0)) return undefined
-  const slope = (ahead: number) => relative(s, ahead === 0 ? walker.here : walker.look(ahead)).slope
-  if (!(slope(by) <= 0)) return undefined
-  const ahead = rootBetween(slope, 0, by)
-  return ahead === undefined ? undefined : { time: walker.time + ahead, excess: relative(s, walker.look(ahead)).value }
+/** The maximum between two places, if the slope changes from rising to falling there and it can exceed a level. */
+function topWithin(s: Settled, from: Place, to: Place, level: number): Highest | undefined {
+  const start = relative(s, from.here)
+  const by = to.time - from.time
+  if (!(start.slope > 0) || !(relative(s, to.here).slope <= 0)) return undefined
+  // Within a step the slope does not rise again: the maximum is below the tangent.
+  if (start.value + start.slope * by <= level) return undefined
+  const ahead = rootBetween(x => relative(s, sampleAhead(from, to, x)).slope, 0, by)
+  return ahead === undefined ? undefined : { time: from.time + ahead, excess: relative(s, from.look(ahead)).value }
+}
+
+function sampleAhead(from: Place, to: Place, ahead: number): Sample {
+  if (ahead === 0) return from.here
+  return ahead === to.time - from.time ? to.here : from.look(ahead)
 }
 
 /** From the first crossing of 10 % to the first of 90 % of the final value, s. 0 where the response jumps past both. */
@@ -119,19 +127,21 @@ export function reachTime(r: Rational, part: number): Outcome<number> {
 }
 
 function firstReach(s: Settled, part: number): number | undefined {
-  const walker = s.y.walk()
+  let place = s.y.start()
   const level = part - 1
-  const short = (sample: Sample) => relative(s, sample).value - level
-  if (short(walker.here) >= 0) return 0
-  for (let count = 0; count <= STEPS && walker.time <= s.until; count++) {
-    const by = s.y.stepAt(walker.time)
-    const top = topWithin(s, walker, by)
-    const passed = short(walker.look(by)) >= 0 ? by : top && top.excess >= level ? top.time - walker.time : undefined
+  if (relative(s, place.here).value >= level) return 0
+  for (let count = 0; count <= STEPS && place.time <= s.until; count++) {
+    const from = place
+    const to = from.next(s.y.stepAt(from.time))
+    const short = (x: number) => relative(s, sampleAhead(from, to, x)).value - level
+    const by = to.time - from.time
+    const top = topWithin(s, from, to, level)
+    const passed = short(by) >= 0 ? by : top && top.excess >= level ? top.time - from.time : undefined
     if (passed !== undefined) {
-      const ahead = rootBetween(x => short(x === 0 ? walker.here : walker.look(x)), 0, passed)
-      return ahead === undefined ? undefined : walker.time + ahead
+      const ahead = rootBetween(short, 0, passed)
+      return ahead === undefined ? undefined : from.time + ahead
     }
-    walker.advance(by)
+    place = to
   }
   return undefined
 }
@@ -184,26 +194,30 @@ function safeStep(off: Sample, limit: number, curvature: number): number {
   return least
 }
 
+/** Forward to where all has died away, keeping the last crossing, which alone is then closed in on. */
 function lastByWalk(s: Settled, band: number): number | undefined {
-  const walker = s.y.walk()
-  let last = 0
-  for (let count = 0; walker.time < s.until; count++) {
+  let place = s.y.start()
+  let last = () => 0
+  for (let count = 0; place.time < s.until; count++) {
     if (count > STEPS) return undefined
-    const by = s.y.stepAt(walker.time)
-    last = lastWithin(s, walker, by, band) ?? last
-    walker.advance(by)
+    const next = place.next(s.y.stepAt(place.time))
+    last = lastWithin(s, place, next, band) ?? last
+    place = next
   }
-  return last
+  return last()
 }
 
-/** Last crossing of the band within the next step, an extremum that pokes out of it included. */
-function lastWithin(s: Settled, walker: Walker, by: number, band: number): number | undefined {
-  const sample = (ahead: number) => relative(s, ahead === 0 ? walker.here : walker.look(ahead))
-  const out = (ahead: number) => Math.abs(sample(ahead).value) - band
-  if (out(by) > 0) return walker.time + by
-  if (out(0) > 0) return walker.time + (rootBetween(out, 0, by) ?? by)
-  if (Math.sign(sample(0).slope) * Math.sign(sample(by).slope) >= 0) return undefined
+/** Finds the last crossing of the band between two places, an extremum that pokes out of it included. */
+function lastWithin(s: Settled, from: Place, to: Place, band: number): (() => number) | undefined {
+  const by = to.time - from.time
+  const sample = (x: number) => relative(s, sampleAhead(from, to, x))
+  const out = (x: number) => Math.abs(sample(x).value) - band
+  if (out(by) > 0) return () => to.time
+  if (out(0) > 0) return () => from.time + (rootBetween(out, 0, by) ?? by)
+  const { value, slope } = sample(0)
+  const turns = Math.sign(slope) * Math.sign(sample(by).slope) < 0
+  if (!turns || Math.abs(value) + Math.abs(slope) * by <= band) return undefined
   const turn = rootBetween(x => sample(x).slope, 0, by)
   if (turn === undefined || out(turn) <= 0) return undefined
-  return walker.time + (rootBetween(out, turn, by) ?? turn)
+  return () => from.time + (rootBetween(out, turn, by) ?? turn)
 }

@@ -6,18 +6,21 @@ import { modulus } from '../numeric/complex'
 /** Value and first derivative. */
 export interface Sample { readonly value: number, readonly slope: number }
 
-/** A place on the time axis that can be moved forward and looked ahead from. */
-export interface Walker {
+/** A place on the time axis that can be looked ahead from. */
+export interface Place {
+  /** s */
   readonly time: number
   readonly here: Sample
   /** Sample at `time + ahead`, ahead ≥ 0. */
   look(ahead: number): Sample
-  advance(by: number): void
+  /** The place further on. */
+  next(by: number): Place
 }
 
 export interface TimeFunction {
   at(time: number): Sample
-  walk(): Walker
+  /** The place at t = 0, just after the step. */
+  start(): Place
   /** A step, s, that resolves whatever has not yet died away at this time: a power of two, so that few differ. */
   stepAt(time: number): number
   /** Bound on the distance from the final value from this time on, if one is known cheaply. */
