@@ -1,6 +1,6 @@
 /** `npm run dev`: as `npm start`, but served from the sources with changes shown as they are made. */
 import { join } from 'node:path'
-import { prepareDatabase, provideDatabase } from './lib/database.mjs'
+import { carryOnDemonstration, prepareDatabase, provideDatabase } from './lib/database.mjs'
 import { ensureDebianPackages } from './lib/debian.mjs'
 import { ensurePackages } from './lib/packages.mjs'
 import { DATA, ROOT } from './lib/paths.mjs'
@@ -21,6 +21,7 @@ await main(async (stack) => {
   stack.add(() => endProcess(child.pid, { patience: 10_000 }))
   announce(env.NUXT_SITE_URL, child.pid)
   prepareDatabase(databaseUrl, ['--accounts'])
+  if (wantsDemonstration()) carryOnDemonstration(stack, databaseUrl)
   const code = await ended
   return stack.ending ? stack.undo() : code
 })

@@ -13,7 +13,7 @@
 import { join } from 'node:path'
 import { ensureBuild } from './lib/build.mjs'
 import { ensureDebianPackages } from './lib/debian.mjs'
-import { prepareDatabase, provideDatabase } from './lib/database.mjs'
+import { carryOnDemonstration, prepareDatabase, provideDatabase } from './lib/database.mjs'
 import { ensurePackages } from './lib/packages.mjs'
 import { DATA, ROOT } from './lib/paths.mjs'
 import { main, nearestFreePort } from './lib/process.mjs'
@@ -33,6 +33,7 @@ await main(async (stack) => {
   announce(env.NUXT_SITE_URL, server.pid)
   console.log(`\nPolewright is at ${env.NUXT_SITE_URL}\n`)
   prepareDatabase(databaseUrl, ['--accounts'])
+  if (wantsDemonstration()) carryOnDemonstration(stack, databaseUrl)
   console.log('Ctrl-C stops it.\n')
   const { code, signal } = await server.ended
   if (stack.ending) return stack.undo()

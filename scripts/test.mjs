@@ -8,13 +8,13 @@
  * What needs neither server nor database runs beside the build; the parts that share the server's machine run one after another.
  */
 import { join } from 'node:path'
-import { ensureBuild } from './lib/build.mjs'
+import { ensureBuild, prepareTypes } from './lib/build.mjs'
 import { ensureDebianPackages } from './lib/debian.mjs'
 import { startMariadb } from './lib/mariadb.mjs'
 import { ensurePackages } from './lib/packages.mjs'
 import { PARTS } from './lib/parts.mjs'
 import { Refusal, ROOT, TEST_DATA } from './lib/paths.mjs'
-import { main, run } from './lib/process.mjs'
+import { main } from './lib/process.mjs'
 
 const OUTPUT = join(TEST_DATA, 'output')
 const MARIADB = join(TEST_DATA, 'mariadb')
@@ -62,7 +62,7 @@ await main(async (stack) => {
   if (name !== undefined && !(name in PARTS)) throw new Refusal(`There is no part "${name}". The parts are ${Object.keys(PARTS).join(', ')}.`)
   ensureDebianPackages()
   ensurePackages()
-  run(process.execPath, ['node_modules/nuxt/bin/nuxt.mjs', 'prepare'], { quiet: true })
+  prepareTypes({ again: true })
   const results = await runAll(name ? [name] : Object.keys(PARTS), stack, rest)
   console.log('')
   for (const one of results) console.log(`${one.name.padEnd(10)} ${String(one.passed).padStart(6)} passed ${String(one.failed).padStart(5)} failed ${String(one.seconds).padStart(5)} s`)

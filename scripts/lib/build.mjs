@@ -30,6 +30,14 @@ export function sourceHash() {
   return hash.digest('hex')
 }
 
+const NUXT = join(ROOT, 'node_modules/nuxt/bin/nuxt.mjs')
+
+/** tsconfig.json points into .nuxt, whatever folder a build writes to. */
+export function prepareTypes({ again = false } = {}) {
+  if (!again && existsSync(join(ROOT, '.nuxt', 'tsconfig.app.json'))) return
+  run(process.execPath, [NUXT, 'prepare'], { quiet: true, env: { ...process.env, NUXT_BUILD_DIR: '' } })
+}
+
 /** A failed build's words without the table of what it had made. */
 function runQuietly(command, args, options) {
   try {
@@ -45,7 +53,8 @@ function build({ output, buildDir, entry, stamp }) {
   if (existsSync(entry) && readJson(stamp)?.source === source) return
   console.log('Building …')
   rmSync(stamp, { force: true })
-  const shown = runQuietly(process.execPath, [join(ROOT, 'node_modules/nuxt/bin/nuxt.mjs'), 'build'], {
+  prepareTypes()
+  const shown = runQuietly(process.execPath, [NUXT, 'build'], {
     env: { ...process.env, NODE_ENV: 'production', NUXT_BUILD_DIR: buildDir, NITRO_OUTPUT_DIR: output, NUXT_TELEMETRY_DISABLED: '1' },
   })
   if (!existsSync(entry)) throw new Refusal(`The build left no server:\n${shown}`)

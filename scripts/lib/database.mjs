@@ -2,7 +2,7 @@
 import { join } from 'node:path'
 import { startMariadb } from './mariadb.mjs'
 import { DATA, ROOT } from './paths.mjs'
-import { run } from './process.mjs'
+import { endProcess, launch, run } from './process.mjs'
 
 /** Resolves to its address. A server that is started here is stopped at the end of the run. */
 export async function provideDatabase(stack) {
@@ -13,10 +13,17 @@ export async function provideDatabase(stack) {
   return server.url('polewright')
 }
 
+const TSX = [join(ROOT, 'node_modules/tsx/dist/cli.mjs'), '--tsconfig', 'scripts/tsconfig.json']
+
+const environment = (databaseUrl, dataDir) => ({ ...process.env, DATABASE_URL: databaseUrl, POLEWRIGHT_DATA_DIR: dataDir })
+
 /** Runs scripts/database.ts, which speaks to the database with the application's own models. */
 export function prepareDatabase(databaseUrl, args = [], { quiet = false, dataDir = DATA } = {}) {
-  return run(process.execPath, [join(ROOT, 'node_modules/tsx/dist/cli.mjs'), '--tsconfig', 'scripts/tsconfig.json', 'scripts/database.ts', ...args], {
-    quiet,
-    env: { ...process.env, DATABASE_URL: databaseUrl, POLEWRIGHT_DATA_DIR: dataDir },
-  })
+  return run(process.execPath, [...TSX, 'scripts/database.ts', ...args], { quiet, env: environment(databaseUrl, dataDir) })
+}
+
+/** What in the demonstration waits for the running server's files goes on beside it; ended with the run, it goes on at the next. */
+export function carryOnDemonstration(stack, databaseUrl) {
+  const child = launch(process.execPath, [...TSX, 'scripts/database.ts', '--demonstration-issues'], { env: environment(databaseUrl, DATA) })
+  stack.add(() => endProcess(child.pid))
 }

@@ -3,6 +3,7 @@ import { QueryTypes, type Transaction } from 'sequelize'
 import { hashOf } from '#shared/document/canonical'
 import { AuditEntry, sequelize } from '../database'
 import { auditEventSchema, type AuditEvent } from './events'
+import { now } from '../utils/clock'
 
 export interface ChainHead { seq: number, hash: string }
 
@@ -19,7 +20,7 @@ async function head(transaction: Transaction): Promise<ChainHead> {
 /** Writes entries in the transaction of what they record. Call it last: from here to COMMIT nobody else can write one. */
 export async function recordAudit(transaction: Transaction, ...events: AuditEvent[]): Promise<ChainHead> {
   let { seq, hash } = await head(transaction)
-  const at = new Date()
+  const at = now()
   for (const unchecked of events) {
     const event = auditEventSchema.parse(unchecked)
     const previousHash = hash

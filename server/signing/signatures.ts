@@ -6,6 +6,7 @@ import type { SignatureMeaning } from '#shared/types/api'
 import { sequelize, Signature, type Submission } from '../database'
 import { newId } from '../utils/ids'
 import { signText, verifyText } from './keys'
+import { now } from '../utils/clock'
 
 export interface Signing {
   actor: Actor
@@ -35,7 +36,7 @@ export async function writeSignature(signing: Signing, transaction: Transaction)
   const { actor, submission, meaning, statement } = signing
   const previous = await latestOfSheet(signing.sheetId, transaction)
   const id = newId()
-  const signedAt = new Date()
+  const signedAt = now()
   const payloadJson = canonicalText({
     id, revision: signing.revisionId, submission: submission.id,
     contentHash: submission.contentHash, resultsHash: submission.resultsHash,
@@ -53,7 +54,7 @@ export async function writeSignature(signing: Signing, transaction: Transaction)
 /** Strikes out the signatures that stand on a submission; they stay in the record with the reason. */
 export async function voidSignatures(submissionId: string, reason: string, transaction: Transaction, only?: SignatureMeaning): Promise<void> {
   await Signature.update(
-    { voidedAt: new Date(), voidReason: reason },
+    { voidedAt: now(), voidReason: reason },
     { where: { submissionId, voidedAt: null, ...(only ? { meaning: only } : {}) }, transaction },
   )
 }

@@ -6,7 +6,7 @@ import { badInput, conflict } from '../../utils/errors'
 import { newId } from '../../utils/ids'
 import { auditSubject, onRevision } from '../revisions/transition'
 import { frozenDocument } from '../sheets/startRevision'
-import { relativePositions } from './anchors'
+import { relativePositions } from '../../database/queries/anchors'
 
 /** The checker's annotation on a line, a piece of its text, or the sheet. Numbered through the revision. Returns its id. */
 export function annotate(actor: Actor, revisionId: string, input: Annotate): Promise<string> {

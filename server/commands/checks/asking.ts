@@ -6,6 +6,7 @@ import { findPerson, type KnownPerson } from '../../database/queries/people'
 import type { RevisionRecord } from '../../database/queries/revisionRecord'
 import { badInput } from '../../utils/errors'
 import { newId } from '../../utils/ids'
+import { now } from '../../utils/clock'
 
 /** The person, if they can check this revision. */
 export async function requireChecker(record: RevisionRecord, checkerId: string, submitterId: string, transaction: Transaction): Promise<KnownPerson> {
@@ -20,5 +21,5 @@ export async function askChecker(asked: { submissionId: string, checkerId: strin
 }
 
 export async function endCheck(submissionId: string, outcome: CheckOutcome, transaction: Transaction): Promise<void> {
-  await Check.update({ endedAt: new Date(), outcome }, { where: { submissionId, endedAt: null }, transaction })
+  await Check.update({ endedAt: now(), outcome }, { where: { submissionId, endedAt: null }, transaction })
 }

@@ -5,12 +5,13 @@ import * as policies from '#shared/policies/annotations'
 import { see } from '#shared/policies/revisions'
 import type { Ability } from '#shared/types/api'
 import { Annotation, AnnotationReply } from '../../database'
-import { lockRevisionRecord, type RevisionRecord } from '../../database/queries/revisionRecord'
+import { findRevisionRecord, lockRevisionRecord, type RevisionRecord } from '../../database/queries/revisionRecord'
 import { authorise, authoriseSight } from '../../utils/authorise'
 import { notFound } from '../../utils/errors'
 import { newId } from '../../utils/ids'
 import { auditSubject } from '../revisions/transition'
 import { runCommand, type Effects } from '../run'
+import { now } from '../../utils/clock'
 
 interface ThreadWork { annotation: Annotation, record: RevisionRecord, transaction: Transaction, effects: Effects }
 
@@ -30,6 +31,14 @@ async function onThread<T>(actor: Actor, annotationId: string, policy: (actor: A
   })
 }
 
+/** Refuses who may not see the annotation. */
+export async function requireThread(actor: Actor, annotationId: string): Promise<void> {
+  const found = await Annotation.findByPk(annotationId, { attributes: ['revisionId'] })
+  const record = found ? await findRevisionRecord(found.revisionId) : null
+  if (!record) throw notFound()
+  authoriseSight(see(actor, record.facts))
+}
+
 /** An answer by anyone but who raised it makes it answered; a further word of theirs opens it again. */
 export const replyTo = (actor: Actor, annotationId: string, text: string): Promise<void> =>
   onThread(actor, annotationId, policies.reply, async ({ annotation, transaction }) => {
@@ -39,7 +48,7 @@ export const replyTo = (actor: Actor, annotationId: string, text: string): Promi
 
 export const closeAnnotation = (actor: Actor, annotationId: string): Promise<void> =>
   onThread(actor, annotationId, policies.close, async ({ annotation, record, transaction, effects }) => {
-    await annotation.update({ state: 'closed', closedBy: actor.id, closedAt: new Date() }, { transaction })
+    await annotation.update({ state: 'closed', closedBy: actor.id, closedAt: now() }, { transaction })
     effects.audit.push({ event: 'annotation_closed', actorId: actor.id, subject: auditSubject(record), data: { annotation: annotationId, number: annotation.number } })
   })
 

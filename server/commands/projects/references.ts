@@ -6,6 +6,7 @@ import { isDuplicate, ProjectReference } from '../../database'
 import { badInput, notFound } from '../../utils/errors'
 import { newId } from '../../utils/ids'
 import { onProject } from './onProject'
+import { now } from '../../utils/clock'
 
 async function once<T>(work: () => Promise<T>): Promise<T> {
   try { return await work() }
@@ -23,7 +24,7 @@ export const changeReference = (actor: Actor, projectId: string, id: string, inp
   once(() => onProject(actor, projectId, workInProject, async ({ transaction }) => {
     const reference = await ProjectReference.findOne({ where: { id, projectId }, transaction })
     if (!reference) throw notFound()
-    return reference.update({ ...input, updatedAt: new Date() }, { transaction })
+    return reference.update({ ...input, updatedAt: now() }, { transaction })
   }))
 
 /** Takes it off the list; sheets that cite it keep their text. */

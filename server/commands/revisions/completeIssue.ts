@@ -7,6 +7,7 @@ import type { Effects } from '../run'
 import { onIssue, type IssueWork } from './issuing'
 import { writeTo } from './letters'
 import { auditSubject, moveRevision } from './transition'
+import { now } from '../../utils/clock'
 
 export interface StampedFile { key: string, sha256: string, size: number }
 
@@ -40,7 +41,7 @@ export function completeIssue(issueId: string, file: StampedFile): Promise<boole
     const { issue, record } = found
     if (issue.issuedAt) return true
     if (issue.failedAt) return false
-    await issue.update({ pdfStorageKey: file.key, pdfHash: file.sha256, pdfSize: file.size, issuedAt: new Date() }, { transaction })
+    await issue.update({ pdfStorageKey: file.key, pdfHash: file.sha256, pdfSize: file.size, issuedAt: now() }, { transaction })
     await moveRevision(record.revision, 'pdf_stored', transaction, effects)
     const supersedes = await supersedeEarlier(found, transaction, effects)
     const recipients = await tellClient(found, supersedes, transaction)

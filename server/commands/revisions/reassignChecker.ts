@@ -6,6 +6,7 @@ import { askChecker, endCheck, requireChecker } from '../checks/asking'
 import { carryTicks } from '../checks/carryTicks'
 import { writeTo, writeToPeople } from './letters'
 import { auditSubject, onRevision, requireVersion } from './transition'
+import { now } from '../../utils/clock'
 
 /** A manager names another checker, or another due date. Ticks are personal: the new checker starts without. */
 export function reassignChecker(actor: Actor, revisionId: string, input: Reassign): Promise<void> {
@@ -18,7 +19,7 @@ export function reassignChecker(actor: Actor, revisionId: string, input: Reassig
     const cause = newId()
     await endCheck(submission.id, 'reassigned', transaction)
     await askChecker({ submissionId: submission.id, checkerId: checker.id, askedBy: actor.id, dueDate: input.due }, transaction)
-    await revision.update({ checkerId: checker.id, dueDate: input.due, version: revision.version + 1, updatedAt: new Date() }, { transaction })
+    await revision.update({ checkerId: checker.id, dueDate: input.due, version: revision.version + 1, updatedAt: now() }, { transaction })
     await carryTicks(record, submission.id, checker.id, transaction)
     await writeTo(checker, record, { kind: 'checker_asked', by: actor.name, due: input.due }, cause, transaction)
     if (former !== checker.id) await writeToPeople([former], record, { kind: 'recalled', by: actor.name, reason: `${checker.name} checks it instead.` }, cause, transaction)

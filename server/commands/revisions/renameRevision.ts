@@ -3,6 +3,7 @@ import type { Rename } from '#shared/schemas/revisions'
 import { isDuplicate } from '../../database'
 import { badInput } from '../../utils/errors'
 import { auditSubject, onRevision } from './transition'
+import { now } from '../../utils/clock'
 
 async function rename(actor: Actor, revisionId: string, input: Rename): Promise<void> {
   await onRevision(actor, revisionId, 'rename', async (record, transaction, effects) => {
@@ -10,8 +11,8 @@ async function rename(actor: Actor, revisionId: string, input: Rename): Promise<
     if (input.number !== undefined && input.number !== sheet.number && facts.sheetIssued) {
       throw badInput('number', 'The sheet has been issued under its number, so it keeps it.', 'number_issued')
     }
-    await sheet.update({ ...input, updatedAt: new Date() }, { transaction })
-    await revision.update({ version: revision.version + 1, updatedAt: new Date() }, { transaction })
+    await sheet.update({ ...input, updatedAt: now() }, { transaction })
+    await revision.update({ version: revision.version + 1, updatedAt: now() }, { transaction })
     effects.changed(revisionId, 'state')
     effects.audit.push({ event: 'revision_renamed', actorId: actor.id, subject: auditSubject(record), data: { changed: { ...input } } })
   })

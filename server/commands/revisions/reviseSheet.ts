@@ -5,7 +5,7 @@ import { nextLabel } from '#shared/workflow/labels'
 import { Revision, sequelize } from '../../database'
 import { conflict } from '../../utils/errors'
 import { frozenDocument, startRevision } from '../sheets/startRevision'
-import { auditSubject, onRevision } from './transition'
+import { auditSubject, onRevision, requireVersion } from './transition'
 
 async function wasForConstruction(sheetId: string, transaction: Transaction): Promise<boolean> {
   const [row] = await sequelize.query<{ issued: number }>(
@@ -19,6 +19,7 @@ async function wasForConstruction(sheetId: string, transaction: Transaction): Pr
 /** Starts the next revision from an issued one: same content, same ids of lines and blocks, its contributors inherited. Returns its id. */
 export function reviseSheet(actor: Actor, revisionId: string, input: Revise): Promise<string> {
   return onRevision(actor, revisionId, 'revise', async (record, transaction, effects) => {
+    if (input.version !== undefined) requireVersion(record, input.version)
     const { sheet, project } = record
     const document = await frozenDocument(revisionId, transaction)
     if (!document) throw conflict('wrong_state', 'There is no frozen content to start from.')

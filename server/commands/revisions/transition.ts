@@ -9,6 +9,7 @@ import { lockRevisionRecord, type RevisionRecord, type SubmissionHead } from '..
 import { authorise, authoriseSight } from '../../utils/authorise'
 import { conflict, notFound } from '../../utils/errors'
 import { runCommand, type Effects } from '../run'
+import { now } from '../../utils/clock'
 
 export type RevisionWork<T> = (record: RevisionRecord, transaction: Transaction, effects: Effects) => Promise<T>
 
@@ -45,8 +46,8 @@ type Changes = Partial<Pick<Revision, 'checkerId' | 'dueDate' | 'purpose' | 'ret
 export async function moveRevision(revision: Revision, event: RevisionEvent, transaction: Transaction, effects: Effects, changes: Changes = {}): Promise<void> {
   const outcome = transition(revision.state, event)
   if (!outcome.ok) throw conflict('wrong_state', `It is ${STATE_LABELS[revision.state].toLowerCase()}, so this cannot be done.`, { state: revision.state })
-  const now = new Date()
-  await revision.update({ ...changes, state: outcome.state, since: now, updatedAt: now, version: revision.version + 1 }, { transaction })
+  const moment = now()
+  await revision.update({ ...changes, state: outcome.state, since: moment, updatedAt: moment, version: revision.version + 1 }, { transaction })
   await RevisionDoc.update({ state: outcome.state }, { where: { revisionId: revision.id }, transaction })
   effects.stateChanged(revision.id)
 }

@@ -1,4 +1,5 @@
 import { DataTypes, type ModelAttributeColumnOptions } from 'sequelize'
+import { now } from '../../utils/clock'
 import { sequelize } from '../connection'
 
 /** Column shapes that the models share. Each call makes a new object, since Sequelize writes into it. */
@@ -13,7 +14,7 @@ export const longText = () => ({ type: DataTypes.TEXT('long'), allowNull: false 
 export const count = () => ({ type: DataTypes.INTEGER.UNSIGNED, allowNull: false } satisfies ModelAttributeColumnOptions)
 export const maybeCount = () => ({ type: DataTypes.INTEGER.UNSIGNED, allowNull: true } satisfies ModelAttributeColumnOptions)
 export const day = () => ({ type: DataTypes.DATEONLY, allowNull: true } satisfies ModelAttributeColumnOptions)
-export const at = () => ({ type: DataTypes.DATE(3), allowNull: false, defaultValue: DataTypes.NOW } satisfies ModelAttributeColumnOptions)
+export const at = () => ({ type: DataTypes.DATE(3), allowNull: false, defaultValue: now } satisfies ModelAttributeColumnOptions)
 export const maybeAt = () => ({ type: DataTypes.DATE(3), allowNull: true } satisfies ModelAttributeColumnOptions)
 export const json = () => ({ type: DataTypes.JSON, allowNull: false } satisfies ModelAttributeColumnOptions)
 export const oneOf = (...values: readonly string[]) => ({ type: DataTypes.ENUM(...values), allowNull: false } satisfies ModelAttributeColumnOptions)
