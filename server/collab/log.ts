@@ -81,7 +81,7 @@ class DatabaseLog implements SheetLog {
       'SELECT seq, user_id, bytes FROM revision_updates WHERE revision_id = ? AND seq > ? ORDER BY seq', [revisionId, folded], transaction)
     if (!isWithoutGap(rows, folded + 1, head.next_seq)) throw new DamagedLog(revisionId, `ends before or skips a number below ${head.next_seq}`)
     const updates = rows.map(row => new Uint8Array(row.bytes))
-    return { head: toHead(head), rows, updates: snapshot ? [new Uint8Array(snapshot.bytes), ...updates] : updates }
+    return { head: toHead(head), folded, rows, updates: snapshot ? [new Uint8Array(snapshot.bytes), ...updates] : updates }
   }
 
   async load(revisionId: string): Promise<Loaded | null> {
@@ -195,7 +195,8 @@ class DatabaseLog implements SheetLog {
     await this.database.query(
       'INSERT INTO revision_snapshots (revision_id, seq, bytes, created_at) VALUES (?) ON DUPLICATE KEY UPDATE seq = seq',
       { replacements: [[revisionId, last, bytes, new Date()]] })
-    await this.database.query('DELETE FROM revision_updates WHERE revision_id = ? AND seq IN (?)', { replacements: [revisionId, seqs] })
+    // Rows up to the former snapshot are those that a halt left behind.
+    await this.database.query('DELETE FROM revision_updates WHERE revision_id = ? AND (seq <= ? OR seq IN (?))', { replacements: [revisionId, stored.folded, seqs] })
     await this.database.query('DELETE FROM revision_snapshots WHERE revision_id = ? AND seq < ?', { replacements: [revisionId, last] })
   }
 }

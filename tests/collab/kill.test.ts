@@ -6,7 +6,7 @@ import { closePages, openPage, type Page } from './support/sheet'
 import { expectAllSaved, randomFrom, Writer } from './support/tokens'
 
 /** `npm run soak:collab` sets more. */
-const KILLS = Number(process.env.POLEWRIGHT_KILLS ?? 8)
+const KILLS = Number(process.env.POLEWRIGHT_KILLS ?? 5)
 const SEED = Number(process.env.POLEWRIGHT_SEED ?? 20260401)
 
 let server: OwnServer | null = null
