@@ -34,10 +34,15 @@ function spawnWorker(reply: (reply: EngineReply) => void, failed: (message: stri
 
 export function useEngine(onResults: (results: LineResult[]) => void): SheetEngineClient {
   const round = ref(0)
+  let names = ''
   const typesetMemory = new Map<string, Promise<string | null>>()
   const queue: EngineQueue = createEngineQueue({
     spawn: spawnWorker,
     onResults: (results) => {
+      const now = results.map(result => result.defines ?? '').join(' ')
+      // Whether a word is a name or a unit depends on what the sheet defines.
+      if (now !== names) typesetMemory.clear()
+      names = now
       onResults(results)
       round.value += 1
     },

@@ -41,6 +41,8 @@ export interface SheetEditorHub {
 }
 
 const NOBODY: readonly never[] = []
+/** Subscribed to under this word: the set of names that the sheet defines. No row has it for an id. */
+export const NAMES = '*names'
 
 /** Numbers of the requirement lines by id, in reading order, from 1. */
 export function numberRequirements(results: readonly LineResult[]): Map<string, number> {
@@ -59,14 +61,18 @@ function createVisibility() {
   const observer = typeof IntersectionObserver === 'undefined'
     ? null
     : new IntersectionObserver((entries) => {
-      for (const entry of entries) if (entry.isIntersecting) waiting.get(entry.target)?.()
-    }, { rootMargin: '700px 0px' })
+        for (const entry of entries) if (entry.isIntersecting) waiting.get(entry.target)?.()
+      }, { rootMargin: '700px 0px' })
   return {
     observe(element: HTMLElement, show: () => void) {
-      if (!observer) { show(); return () => {} }
+      if (!observer) show()
+      if (!observer) return () => {}
       waiting.set(element, show)
       observer.observe(element)
-      return () => { waiting.delete(element); observer.unobserve(element) }
+      return () => {
+        waiting.delete(element)
+        observer.unobserve(element)
+      }
     },
     destroy: () => observer?.disconnect(),
   }
@@ -79,6 +85,7 @@ export function createSheetEditorHub(typeset: SheetEditorHub['typeset']): SheetE
   const slots = shallowReactive(new Map<string, HTMLElement>())
   let byId = new Map<string, LineResult>()
   let numbers = new Map<string, number>()
+  let names = ''
   let people: ReadonlyMap<string, readonly RowPerson[]> = new Map()
   let annotations: ReadonlyMap<string, readonly AnnotationView[]> = new Map()
 
@@ -113,7 +120,9 @@ export function createSheetEditorHub(typeset: SheetEditorHub['typeset']): SheetE
       byId = map
       numbers = nextNumbers
       results.value = next
-      tell(changed)
+      const nextNames = next.map(result => result.defines ?? '').join(' ')
+      tell(nextNames === names ? changed : [...changed, NAMES])
+      names = nextNames
     },
     setPeople(next) {
       const changed = changedKeys(people, next, alike)

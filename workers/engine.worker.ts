@@ -19,14 +19,19 @@ function answer({ call, question }: EngineQuestion) {
     case 'response': return engine.response(question)
     case 'step': return engine.step(question)
     case 'typeset': return latexOf(question)
-    case 'expression': return null
-    case 'cautions': return engine.cautions(question)
+    case 'expression': return problemOf(question)
+    case 'cautions': return []
   }
 }
 
 function latexOf(source: string): string | null {
   const typeset = engine.typesetExpression(source)
   return 'latex' in typeset ? typeset.latex : null
+}
+
+function problemOf(source: string): string | null {
+  const problem = engine.evaluateExpression(source).problems.find(found => found.severity === 'error')
+  return problem ? [problem.message, problem.hint].filter(Boolean).join(' ') : null
 }
 
 const reply = (message: EngineReply) => postMessage(message)

@@ -19,7 +19,7 @@ export interface PadEditorOptions {
   user: { name: string, initials: string, color: string }
   hub: SheetEditorHub
   engine: SheetEngineClient
-  editable: boolean
+  editable: () => boolean
   /** Significant digits shown. */
   digits: () => number
   openInsert: () => void
@@ -32,13 +32,16 @@ export interface PadEditorOptions {
 /** How often at most the whole document is read for the head of the sheet, in milliseconds. */
 const DOCUMENT_EVERY = 250
 
+/** The schema is that of a sheet (its round trip is tested), so that its JSON is a sheet's. */
+const documentOf = (editor: Editor) => editor.getJSON() as unknown as SheetDocument
+
 export function usePadEditor(options: PadEditorOptions) {
   const { hub, engine } = options
   const empty = ref(false)
   const spoken = ref('')
 
   const tellDocument = useThrottleFn((editor: Editor) => {
-    if (!editor.isDestroyed) options.onDocument(editor.getJSON() as SheetDocument)
+    if (!editor.isDestroyed) options.onDocument(documentOf(editor))
   }, DOCUMENT_EVERY, true)
 
   /** Reads out what became of the line one is at, once typing pauses. */
@@ -63,7 +66,7 @@ export function usePadEditor(options: PadEditorOptions) {
   }
 
   const editor = new Editor({
-    editable: options.editable,
+    editable: options.editable(),
     extensions: sheetExtensions({ ...options, responseView: BlockResponse, figureView: BlockFigure }),
     editorProps: {
       attributes: { 'class': 'pad-editor', 'aria-label': 'Sheet', 'aria-multiline': 'true', 'role': 'textbox' },
@@ -78,6 +81,10 @@ export function usePadEditor(options: PadEditorOptions) {
   })
 
   watch(hub.results, () => { void speak(editor) })
+  watch(options.editable, (now) => {
+    hub.editable.value = now
+    editor.setEditable(now)
+  }, { immediate: true })
   watch(options.digits, () => changed(editor))
   onMounted(() => changed(editor))
   onBeforeUnmount(() => editor.destroy())

@@ -35,8 +35,8 @@ export function positionsWithoutOwnId(before: DocumentNode, after: DocumentNode,
   const former = new Map<string, number>()
   const wanting: number[] = []
   for (const [id, holders] of seen) {
-    if (id === '') { wanting.push(...holders.map(holder => holder.pos)); continue }
-    if (holders.length === 1) continue
+    if (id === '') wanting.push(...holders.map(holder => holder.pos))
+    if (id === '' || holders.length === 1) continue
     if (former.size === 0) for (const bearer of idBearers(before)) if (!former.has(bearer.id)) former.set(bearer.id, mapped(bearer.pos))
     const keeper = holders.find(holder => holder.pos === former.get(id)) ?? holders[0]
     wanting.push(...holders.filter(holder => holder !== keeper).map(holder => holder.pos))

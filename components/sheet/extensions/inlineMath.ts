@@ -1,4 +1,4 @@
-import { Node, nodeInputRule } from '@tiptap/core'
+import { InputRule, Node } from '@tiptap/core'
 import { NodeSelection } from '@tiptap/pm/state'
 import { textAttribute } from './attributes'
 import { EDIT_EVENT, inlineMathView } from '../views/inlineMathView'
@@ -26,7 +26,13 @@ export const InlineMath = (hub: SheetEditorHub) => Node.create({
   renderText: ({ node }) => `$${node.attrs.source}$`,
   addNodeView: () => inlineMathView(hub),
   addInputRules() {
-    return [nodeInputRule({ find: /\$([^$\n]{1,500})\$$/, type: this.type, getAttributes: match => ({ source: match[1]?.trim() ?? '' }) })]
+    return [new InputRule({
+      find: /\$([^$\n]{1,500})\$$/,
+      handler: ({ state, range, match }) => {
+        const source = match[1]?.trim()
+        if (source) state.tr.replaceWith(range.from, range.to, this.type.create({ source }))
+      },
+    })]
   },
   addCommands() {
     return {

@@ -4,7 +4,7 @@ import type { NodeViewRenderer, NodeViewRendererProps } from '@tiptap/core'
 import type { NodeView } from '@tiptap/pm/view'
 import { element, mark, typesetInto } from './dom'
 import { text } from '../extensions/attributes'
-import type { SheetEditorHub } from '~/composables/useSheetEditorHub'
+import { NAMES, type SheetEditorHub } from '~/composables/useSheetEditorHub'
 
 /** Sent to the element of a selected formula to open it for typing. */
 export const EDIT_EVENT = 'sheet:edit'
@@ -14,6 +14,7 @@ class InlineMathView implements NodeView {
   private readonly shown = element('span', { class: 'inline-math-shown' })
   private readonly field = element('input', { 'class': 'inline-math-field', 'type': 'text', 'aria-label': 'Inline mathematics, typed as in a line', 'spellcheck': 'false', 'maxlength': '500' })
   private node: DocumentNode
+  private readonly leave: () => void
 
   constructor(private readonly props: NodeViewRendererProps, private readonly hub: SheetEditorHub) {
     this.node = props.node
@@ -23,6 +24,7 @@ class InlineMathView implements NodeView {
     this.field.addEventListener('keydown', event => this.onKey(event))
     this.field.addEventListener('input', () => this.fit())
     this.field.addEventListener('blur', () => this.close(false))
+    this.leave = hub.subscribe(NAMES, () => { void this.show() })
     void this.show()
   }
 
@@ -45,6 +47,8 @@ class InlineMathView implements NodeView {
 
   ignoreMutation(): boolean { return true }
 
+  destroy(): void { this.leave() }
+
   private source(): string { return text(this.node.attrs.source, 500) }
 
   private async show(): Promise<void> {
@@ -63,7 +67,10 @@ class InlineMathView implements NodeView {
     this.fit()
     this.dom.append(this.field)
     // The editor's own focus handling comes after the click or the key that opened the field.
-    requestAnimationFrame(() => { this.field.focus(); this.field.select() })
+    requestAnimationFrame(() => {
+      this.field.focus()
+      this.field.select()
+    })
   }
 
   private fit(): void { this.field.style.width = `${Math.max(6, this.field.value.length + 2)}ch` }

@@ -72,7 +72,7 @@ class LineView implements NodeView {
     this.parts.side.append(this.status.dom)
     this.parts.missing.addEventListener('click', () => this.props.editor.commands.enterReference(this.position()))
     this.link = linkRow(hub, this.parts.slot, state => this.refresh(state))
-    this.unobserve = hub.observe(this.dom, () => { this.near = true; this.typeset() })
+    this.unobserve = hub.observe(this.dom, () => this.comeNear())
     this.follow()
   }
 
@@ -95,6 +95,11 @@ class LineView implements NodeView {
     this.clearUnderline()
     this.unobserve()
     this.link.destroy()
+  }
+
+  private comeNear(): void {
+    this.near = true
+    this.typeset()
   }
 
   private isIsland(target: Node): boolean {

@@ -45,8 +45,9 @@ function requirementParts(of: RequirementResult): Part[] {
 /** What stands in the Output column for a line; empty for notes, functions and lines in error. */
 export function outputParts(result: LineResult | null): Part[] {
   if (!result || result.status === 'error') return []
-  if (result.requirement) return requirementParts(result.requirement)
-  return result.value ? valueParts(result.value) : []
+  const remark = result.remark ? [detail(result.remark)] : []
+  if (result.requirement) return [...requirementParts(result.requirement), ...remark]
+  return result.value ? [...valueParts(result.value), ...remark] : []
 }
 
 /** Words of a line's result for someone who hears the sheet. */
