@@ -50,8 +50,7 @@ export function gainOverBand(r: Rational, from: number, to: number): Outcome<{ l
   let least = bandPoint(r, from)
   let greatest = least
   const inside = r.gain === 0 ? [] : monotoneKnots(r).filter(k => k.omega > from && k.omega < to)
-  for (const omega of [...inside.map(k => k.omega), to]) {
-    const point = bandPoint(r, omega)
+  for (const point of [...inside.map(k => ({ omega: k.omega, gain: k.level * DB_PER_NEPER })), bandPoint(r, to)]) {
     if (point.gain < least.gain) least = point
     if (point.gain > greatest.gain) greatest = point
   }
