@@ -14,8 +14,18 @@ const fontFaces = [
   '@fontsource/jetbrains-mono/600.css',
 ]
 
+// Keywords of a content security policy, which are quoted within it.
+const SELF = '\'self\''
+const NONE = '\'none\''
+const INLINE = '\'unsafe-inline\''
+const DYNAMIC = '\'strict-dynamic\''
+const NONCE = '\'nonce-{{nonce}}\''
+
+// Vite's development client writes style elements and listens on a socket of its own.
+const developing = process.env.NODE_ENV !== 'production'
+
 export default defineNuxtConfig({
-  modules: ['@nuxtjs/tailwindcss', '@pinia/nuxt', '@vueuse/nuxt', 'nuxt-auth-utils', '@nuxt/eslint'],
+  modules: ['@nuxtjs/tailwindcss', '@pinia/nuxt', '@vueuse/nuxt', 'nuxt-auth-utils', 'nuxt-security', '@nuxt/eslint'],
 
   components: [{ path: '~/components', pathPrefix: true, extensions: ['vue'] }],
   devtools: { enabled: false },
@@ -92,5 +102,44 @@ export default defineNuxtConfig({
   // Who is signed in comes from GET /api/auth/session; the cookie's content is for the server alone.
   auth: { loadStrategy: 'none' },
   eslint: { config: { stylistic: true } },
+
+  security: {
+    nonce: true,
+    // What a request may bring and how often is bounded where it is known who asks (server/middleware, shared/limits.ts).
+    rateLimiter: false,
+    requestSizeLimiter: false,
+    xssValidator: false,
+    corsHandler: false,
+    allowedMethodsRestricter: false,
+    hidePoweredBy: true,
+    headers: {
+      contentSecurityPolicy: {
+        'default-src': [NONE],
+        'script-src': [SELF, DYNAMIC, NONCE],
+        'script-src-attr': [NONE],
+        'style-src': developing ? [SELF, INLINE] : [SELF, NONCE],
+        // KaTeX places the parts of a formula by style attributes.
+        'style-src-attr': [INLINE],
+        'img-src': [SELF, 'data:', 'blob:'],
+        'font-src': [SELF, 'data:'],
+        'connect-src': developing ? [SELF, 'ws:'] : [SELF],
+        'worker-src': [SELF],
+        'manifest-src': [SELF],
+        'form-action': [SELF],
+        'frame-ancestors': [NONE],
+        'base-uri': [NONE],
+        'object-src': [NONE],
+        'upgrade-insecure-requests': false,
+      },
+      crossOriginEmbedderPolicy: false,
+      crossOriginOpenerPolicy: 'same-origin',
+      crossOriginResourcePolicy: 'same-origin',
+      referrerPolicy: 'same-origin',
+      // Only where the site is served by https; see server/middleware/03.transport.ts.
+      strictTransportSecurity: false,
+      xFrameOptions: 'DENY',
+      permissionsPolicy: { 'camera': [], 'display-capture': [], 'geolocation': [], 'microphone': [], 'payment': [], 'usb': [] },
+    },
+  },
   tailwindcss: { cssPath: ['~/assets/css/main.css', { injectPosition: 'first' }], viewer: false },
 })

@@ -1,5 +1,5 @@
 /** A browser as far as the API is concerned: keeps its cookies and says where its requests come from. */
-import { inject } from 'vitest'
+import { base } from './base'
 
 export interface Answer<T = unknown> {
   status: number
@@ -15,7 +15,7 @@ export interface RequestOptions { headers?: Record<string, string>, signal?: Abo
 export class Client {
   private readonly cookies = new Map<string, string>()
 
-  constructor(readonly baseUrl: string = inject('base').url) {}
+  constructor(readonly baseUrl: string = base().url) {}
 
   get cookieHeader(): string {
     return [...this.cookies].map(([name, value]) => `${name}=${value}`).join('; ')

@@ -1,10 +1,8 @@
 /** Before each test file: the tests' own models speak to the same database as the server. */
 import { afterAll, inject } from 'vitest'
+import { useBase } from './base'
 
-const base = inject('base')
-process.env.DATABASE_URL = base.databaseUrl
-process.env.POLEWRIGHT_DATA_DIR = base.dataDir
-process.env.NUXT_SITE_URL = base.url
+useBase(inject('base'))
 
 afterAll(async () => {
   const { sequelize } = await import('../../server/database/connection')

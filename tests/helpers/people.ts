@@ -4,7 +4,7 @@ import { Hash } from '@adonisjs/hash'
 import { Scrypt } from '@adonisjs/hash/drivers/scrypt'
 import { sealSession } from 'h3'
 import type { H3Event } from 'h3'
-import { inject } from 'vitest'
+import { base } from './base'
 import { initialsOf } from '../../shared/people'
 import type { Role } from '../../shared/types/api'
 import { newId } from '../../server/utils/ids'
@@ -66,7 +66,7 @@ export async function openSessionFor(person: Pick<Person, 'id'>): Promise<{ id: 
   const id = [...randomBytes(26)].map(byte => '0123456789ABCDEFGHJKMNPQRSTVWXYZ'[byte & 31]).join('')
   await Session.create({ id, userId: person.id, createdAt: now, lastSeenAt: now, expiresAt: new Date(now.getTime() + 60 * 60 * 1000), userAgent: 'tests', ip: '127.0.0.1' })
   const event = { context: { sessions: { [SESSION_COOKIE]: { id: randomUUID(), createdAt: now.getTime(), data: { secure: { sid: id } } } } } }
-  const cookie = await sealSession(event as unknown as H3Event, { name: SESSION_COOKIE, password: inject('base').sessionPassword })
+  const cookie = await sealSession(event as unknown as H3Event, { name: SESSION_COOKIE, password: base().sessionPassword })
   return { id, cookie }
 }
 
