@@ -4,7 +4,7 @@ import type { Ref } from 'vue'
 import type * as Y from 'yjs'
 import { NOT_SAVED_AFTER } from '~~/shared/limits'
 import type { Changed } from '~~/shared/collab/messages'
-import { NO_CONNECTION, allCommitted, savingState, type SavingState } from '~~/shared/collab/saving'
+import { NO_CONNECTION, allCommitted, nothingWaits, savingState, type SavingState } from '~~/shared/collab/saving'
 import { createSheetProvider } from './collab/sheetProvider'
 
 export interface SheetConnection {
@@ -13,6 +13,8 @@ export interface SheetConnection {
   state: Readonly<Ref<SavingState>>
   /** Everything in the document is committed at this moment. */
   isSaved: () => boolean
+  /** The same, or it was so when the connection ended. */
+  leftNothing: () => boolean
   setKept: (kept: boolean) => void
   connect: () => void
   stop: () => void
@@ -72,6 +74,7 @@ export function useSheetConnection(options: SheetConnectionOptions): SheetConnec
     provider: connection.provider,
     state: shallowReadonly(state),
     isSaved: () => allCommitted(facts),
+    leftNothing: () => nothingWaits(facts),
     setKept: connection.setKept,
     connect: connection.connect,
     stop: () => {

@@ -10,7 +10,7 @@ import { unsentEdits, type UnsentEdits } from '~~/shared/collab/unsent'
 import { canKeep, keepCopy, type KeptCopy } from './collab/keptCopy'
 
 /** How often at most the confirmed state is noted on this device, in milliseconds. */
-const NOTE_EVERY = 2000
+const NOTE_EVERY = 1000
 
 /** A draft as several people edit it: the document, who is in it, and what is saved. */
 export interface LiveSheet {
@@ -49,6 +49,7 @@ export function useSheetDocument(revision: { id: string, epoch: number }, userId
   const left = shallowRef<UnsentEdits | null>(null)
   const earlier = useUnsentEdits(revision.id, revision.epoch, userId)
   let copy: KeptCopy | null = null
+  let arrived = false
   let ended = false
 
   const note = useThrottleFn(() => {
@@ -62,6 +63,9 @@ export function useSheetDocument(revision: { id: string, epoch: number }, userId
     awareness,
     onChanged: what => void changed.trigger(what),
     onSaved: () => {
+      // What an earlier epoch left behind shows against what the server holds, so not before that is here.
+      if (!arrived) void earlier.look(ydoc)
+      arrived = true
       ready.value = true
       void note()
     },
@@ -74,7 +78,9 @@ export function useSheetDocument(revision: { id: string, epoch: number }, userId
     left.value = edits.blocks.length > 0 || edits.removals > 0 ? { epoch: revision.epoch, ...edits } : null
   }
   const stopWatching = watch(connection.state, (state) => {
-    if (state.kind === 'frozen' && !connection.isSaved()) void lookAtFreeze()
+    if (state.kind !== 'frozen') return
+    if (connection.leftNothing()) void copy?.confirm()
+    else void lookAtFreeze()
   })
 
   async function open() {
@@ -86,7 +92,6 @@ export function useSheetDocument(revision: { id: string, epoch: number }, userId
     }
     if (ended) return
     connection.connect()
-    await earlier.look()
   }
   void open()
 
@@ -94,6 +99,7 @@ export function useSheetDocument(revision: { id: string, epoch: number }, userId
     if (ended) return
     ended = true
     stopWatching()
+    if (connection.leftNothing()) void copy?.confirm()
     presence.stop()
     connection.stop()
     awareness.destroy()

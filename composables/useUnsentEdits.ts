@@ -1,40 +1,38 @@
 import * as Y from 'yjs'
 import type { Ref } from 'vue'
 import { unsentEdits, unsentUpdate, type UnsentEdits } from '~~/shared/collab/unsent'
-import { keepCopy, keptEpochs } from './collab/keptCopy'
+import { keepCopy, keptEpochs, removeCopy } from './collab/keptCopy'
 
 export interface UnsentEditsView {
   /** What this person wrote before a freeze that did not make it into the submission; null when there is nothing. */
   unsent: Readonly<Ref<UnsentEdits | null>>
-  /** Looks through the copies that this device keeps. Copies whose every edit was confirmed are removed. */
-  look: () => Promise<void>
+  /**
+   * Looks through the copies that this device keeps. Copies whose every edit arrived are removed.
+   * @param draft the document as the server holds it, when the revision is a draft again
+   */
+  look: (draft?: Y.Doc | null) => Promise<void>
   /** Puts the edits into a draft of the same revision, as new edits of this person. Only ever called on the person's word. */
   putBack: (draft: Y.Doc) => Promise<void>
   /** Removes them from this device. */
   discard: () => Promise<void>
 }
 
-interface Leftover { epoch: number, edits: Omit<UnsentEdits, 'epoch'>, update: Uint8Array, remove: () => Promise<void> }
+interface Leftover { epoch: number, edits: Omit<UnsentEdits, 'epoch'>, update: Uint8Array }
 
-/** Reads one kept copy; null (and the copy removed) when all in it was confirmed. */
-async function readLeftover(revisionId: string, epoch: number, userId: string): Promise<Leftover | null> {
+/**
+ * Reads one kept copy; null when nothing in it is unsent.
+ * @param draft what the server holds now, if it is here; else what it had confirmed last decides
+ */
+async function readLeftover(revisionId: string, epoch: number, userId: string, draft: Y.Doc | null): Promise<Leftover | null> {
   const doc = new Y.Doc()
   const copy = keepCopy(doc, revisionId, epoch, userId, false)
   await copy.whenRead
-  const confirmed = await copy.confirmed()
-  const edits = unsentEdits(doc, confirmed, await copy.authors())
-  const update = unsentUpdate(doc, confirmed)
+  const since = draft ? Y.snapshot(draft) : await copy.confirmed()
+  const edits = unsentEdits(doc, since, await copy.authors())
+  const update = unsentUpdate(doc, since)
   await copy.close()
   doc.destroy()
-
-  const remove = async () => {
-    const again = keepCopy(new Y.Doc(), revisionId, epoch, userId, false)
-    await again.whenRead
-    await again.remove()
-  }
-  if (edits.blocks.length > 0 || edits.removals > 0) return { epoch, edits, update, remove }
-  await remove()
-  return null
+  return edits.blocks.length > 0 || edits.removals > 0 ? { epoch, edits, update } : null
 }
 
 /**
@@ -60,16 +58,17 @@ export function useUnsentEdits(revisionId: string, epoch: number, userId: string
     const gone = leftovers
     leftovers = []
     show()
-    for (const leftover of gone) await leftover.remove()
+    for (const leftover of gone) await removeCopy(revisionId, leftover.epoch, userId, true)
   }
 
   return {
     unsent: shallowReadonly(unsent),
-    look: async () => {
+    look: async (draft = null) => {
       const found: Leftover[] = []
       for (const kept of await keptEpochs(revisionId, epoch, userId)) {
-        const leftover = await readLeftover(revisionId, kept, userId)
+        const leftover = await readLeftover(revisionId, kept, userId, draft)
         if (leftover) found.push(leftover)
+        else await removeCopy(revisionId, kept, userId, false)
       }
       leftovers = found
       show()

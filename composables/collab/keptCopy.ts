@@ -1,5 +1,5 @@
 /** The copy of a document that this device keeps, in IndexedDB, one for each revision, freeze and person. */
-import { IndexeddbPersistence } from 'y-indexeddb'
+import { IndexeddbPersistence, clearDocument } from 'y-indexeddb'
 import * as Y from 'yjs'
 import { storeEpoch, storeName } from '~~/shared/collab/unsent'
 
@@ -35,7 +35,26 @@ export interface KeptCopy {
   /** Notes that all that is in the document now is confirmed. */
   confirm: () => Promise<void>
   close: () => Promise<void>
-  remove: () => Promise<void>
+}
+
+/** Pages that have a copy open hold its lock together; whoever removes it needs it alone. Without locks (plain http) there is none. */
+function holdLock(name: string): () => void {
+  let release = () => {}
+  const released = new Promise<void>(resolve => release = resolve)
+  void navigator.locks?.request(name, { mode: 'shared' }, () => released)
+  return release
+}
+
+/**
+ * Removes a kept copy from this device.
+ * @param whenFree waits until no page has it open; else it is left where it is, since that page may yet write into it
+ */
+export async function removeCopy(revisionId: string, epoch: number, userId: string, whenFree: boolean): Promise<void> {
+  const name = storeName(revisionId, epoch, userId)
+  if (!navigator.locks) return clearDocument(name)
+  await navigator.locks.request(name, whenFree ? {} : { ifAvailable: true }, async (lock) => {
+    if (lock) await clearDocument(name)
+  })
 }
 
 /** Client ids are kept as one text, `12,34`. */
@@ -46,7 +65,9 @@ const toIds = (value: unknown) => new Set(typeof value === 'string' && value !==
  * @param writing whether `ydoc` is about to be edited, so that its client id is this person's
  */
 export function keepCopy(ydoc: Y.Doc, revisionId: string, epoch: number, userId: string, writing: boolean): KeptCopy {
-  const store = new IndexeddbPersistence(storeName(revisionId, epoch, userId), ydoc)
+  const name = storeName(revisionId, epoch, userId)
+  const release = holdLock(name)
+  const store = new IndexeddbPersistence(name, ydoc)
 
   const readAuthors = async () => toIds(await store.get(AUTHORS))
   const whenRead = store.whenSynced.then(async () => {
@@ -68,8 +89,7 @@ export function keepCopy(ydoc: Y.Doc, revisionId: string, epoch: number, userId:
     confirm: async () => {
       await store.set(CONFIRMED, new Uint8Array(Y.encodeSnapshot(Y.snapshot(ydoc))).buffer)
     },
-    close: () => store.destroy(),
-    remove: () => store.clearData(),
+    close: () => store.destroy().then(release),
   }
 }
 

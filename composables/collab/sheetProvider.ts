@@ -50,7 +50,7 @@ export function createSheetProvider(options: SheetProviderOptions): SheetProvide
     awareness: options.awareness,
     params: { epoch: String(options.epoch), format: String(DOCUMENT_FORMAT) },
     WebSocketPolyfill: countingSocket(options.Socket, {
-      opened: () => update({ sent: 0, upTo: 0, answer: null, refused: null, closed: null }),
+      opened: () => update({ sent: 0, upTo: 0, answer: null, editedSince: false, refused: null, closed: null }),
       frame: (sent, answer) => update(answer ? { sent, answer: sent } : { sent }),
     }),
     maxBackoffTime: longestPause(),
@@ -58,13 +58,20 @@ export function createSheetProvider(options: SheetProviderOptions): SheetProvide
     shouldReconnect: event => !stopsForGood(event),
   })
 
+  const onEdit = (_bytes: Uint8Array, origin: unknown) => {
+    if (origin !== provider && !facts.connected && !facts.editedSince) update({ editedSince: true })
+  }
+  options.ydoc.on('update', onEdit)
   listen(provider, options, update, () => facts)
   return {
     provider,
     facts: () => facts,
     setKept: kept => update({ kept }),
     connect: () => provider.connect(),
-    destroy: () => provider.destroy(),
+    destroy: () => {
+      options.ydoc.off('update', onEdit)
+      provider.destroy()
+    },
   }
 }
 

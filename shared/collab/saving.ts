@@ -15,6 +15,8 @@ export interface ConnectionFacts {
   upTo: number
   /** Number of the last answer to the server's question, null before the first. */
   answer: number | null
+  /** The document was edited after the last connection ended. */
+  editedSince: boolean
   /** At least one attempt to connect failed, or a connection was lost. */
   lost: boolean
   /** This device keeps a copy of the document. */
@@ -40,13 +42,17 @@ export interface SavingState {
 }
 
 export const NO_CONNECTION: ConnectionFacts = {
-  connected: false, synced: false, sent: 0, upTo: 0, answer: null, lost: false, kept: false, waitingSince: null, refused: null, closed: null,
+  connected: false, synced: false, sent: 0, upTo: 0, answer: null, editedSince: false, lost: false, kept: false, waitingSince: null, refused: null, closed: null,
+}
+
+/** On this connection nothing is on its way; or nothing was when the last one ended, and nothing was written since. */
+export function nothingWaits(facts: ConnectionFacts): boolean {
+  return facts.refused === null && !facts.editedSince && facts.answer !== null && facts.upTo >= facts.answer && facts.upTo >= facts.sent
 }
 
 /** Every frame is committed, and the answer to the server's question among them. */
 export function allCommitted(facts: ConnectionFacts): boolean {
-  return facts.connected && facts.synced && facts.refused === null
-    && facts.answer !== null && facts.upTo >= facts.answer && facts.upTo >= facts.sent
+  return facts.connected && facts.synced && nothingWaits(facts)
 }
 
 const where = (kept: boolean) => kept
