@@ -43,7 +43,7 @@ export const approveSchema = z.strictObject({
   password: passwordSchema,
 })
 export const withdrawSchema = z.strictObject({ version, reason: reason('the reason for withdrawing it'), password: passwordSchema })
-export const reviseSchema = z.strictObject({ reason: paragraphOfText('the reason for revision', 2000, 3) })
+export const reviseSchema = z.strictObject({ version: version.optional(), reason: paragraphOfText('the reason for revision', 2000, 3) })
 export const reassignSchema = z.strictObject({ version, checkerId: idSchema, due: day.nullable() })
 export const cancelSchema = z.strictObject({ version })
 export const renameSchema = z.strictObject({

@@ -15,7 +15,7 @@ export const sheetSettingsSchema = z.strictObject({
 export const createSheetSchema = z.strictObject({
   number: sheetNumberSchema,
   title: sheetTitleSchema,
-  from: idSchema.optional(),
+  from: z.union([z.literal('').transform(() => undefined), idSchema]).optional(),
 })
 
 export const REGISTER_SORTS = ['number', '-number', 'title', '-title', 'state', '-state', 'since', '-since', 'due', '-due', 'revision', '-revision'] as const
@@ -34,3 +34,4 @@ export const registerQuerySchema = z.object({
 
 export type CreateSheet = z.output<typeof createSheetSchema>
 export type RegisterQuery = z.output<typeof registerQuerySchema>
+export const candidatesQuerySchema = z.object({ revision: idSchema.optional() })

@@ -111,6 +111,15 @@ export interface AnnotationView {
  */
 export interface SubmitFinding { lineId: string | null, kind: 'error' | 'requirement' | 'reference' | 'hold' | 'caution', what: string, mustMend: boolean }
 
+/** A draft computed on the server as it would be frozen. `hash` is null while something in it must be mended first. */
+export interface SubmitReview {
+  findings: SubmitFinding[]
+  hash: string | null
+  seq: number
+  /** Who else has written in it within the last minutes. */
+  editors: PersonRef[]
+}
+
 export interface VerificationView {
   genuine: boolean
   code: string

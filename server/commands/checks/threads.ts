@@ -1,6 +1,6 @@
 /** Answers to annotations, their closing and opening again. */
 import type { Transaction } from 'sequelize'
-import type { Actor } from '#shared/policies/actor'
+import { isStaff, type Actor } from '#shared/policies/actor'
 import * as policies from '#shared/policies/annotations'
 import { see } from '#shared/policies/revisions'
 import type { Ability } from '#shared/types/api'
@@ -22,7 +22,7 @@ async function onThread<T>(actor: Actor, annotationId: string, policy: (actor: A
   return runCommand(async (transaction, effects) => {
     const record = await lockRevisionRecord(found.revisionId, transaction)
     const annotation = await Annotation.findByPk(annotationId, { transaction })
-    if (!record || !annotation) throw notFound()
+    if (!record || !annotation || !isStaff(actor)) throw notFound()
     authoriseSight(see(actor, record.facts))
     authorise(policy(actor, { state: annotation.state, byId: annotation.byId, revision: record.facts }))
     const result = await work({ annotation, record, transaction, effects })
@@ -35,7 +35,7 @@ async function onThread<T>(actor: Actor, annotationId: string, policy: (actor: A
 export async function requireThread(actor: Actor, annotationId: string): Promise<void> {
   const found = await Annotation.findByPk(annotationId, { attributes: ['revisionId'] })
   const record = found ? await findRevisionRecord(found.revisionId) : null
-  if (!record) throw notFound()
+  if (!record || !isStaff(actor)) throw notFound()
   authoriseSight(see(actor, record.facts))
 }
 
