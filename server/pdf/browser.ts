@@ -13,7 +13,7 @@ export interface PrintRequest {
   files: ReadonlyMap<string, { mime: string, bytes: Buffer }>
 }
 
-const PAGE_TIMEOUT_MS = 30_000
+const PAGE_TIMEOUT_MS = 60_000
 const IDLE_MS = 5 * 60_000
 /** A browser that has printed this often is replaced, whatever it may have kept. */
 const MAX_USES = 200

@@ -64,4 +64,4 @@ async function makePdf(payload: unknown, { renew }: JobContext): Promise<void> {
 
 const giveUp = (payload: unknown, reason: string): Promise<void> => giveUpIssue(payloadSchema.parse(payload).issueId, reason)
 
-export const registerPdfJob = (): void => registerJob('pdf', { run: makePdf, giveUp, attempts: 4, lease: 180_000, pause: 3000 })
+export const registerPdfJob = (): void => registerJob('pdf', { run: makePdf, giveUp, attempts: 4, lease: 300_000, pause: 3000 })
