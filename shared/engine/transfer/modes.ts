@@ -3,8 +3,8 @@
  * the poles are apart; where they crowd, the residues cancel and `cascade.ts` takes over.
  */
 import type { Complex } from '../numeric/complex'
-import { exponential, modulus, multiply, scale, subtract } from '../numeric/complex'
-import { EPSILON, exp } from '../numeric/math'
+import { modulus, scale, subtract } from '../numeric/complex'
+import { EPSILON, cos, exp, sin } from '../numeric/math'
 import { ratioOfProducts } from './evaluate'
 import type { Place, Sample, TimeFunction } from './time-function'
 import { fastestRate, stepFor } from './time-function'
@@ -53,13 +53,22 @@ function isCrowded(m: Modes): boolean {
   return sum > CROWDED * largest
 }
 
+/** Written out in numbers: this is where a search through the step response spends its time. */
 function sampleOf(m: Modes, time: number): Sample {
   let value = m.constant
   let slope = 0
   for (let k = 0; k < m.poles.length; k++) {
-    const term = multiply(m.residues[k]!, exponential(scale(m.poles[k]!, time)))
-    value += term.re
-    slope += m.poles[k]!.re * term.re - m.poles[k]!.im * term.im
+    const pole = m.poles[k]!
+    const residue = m.residues[k]!
+    const size = exp(pole.re * time)
+    if (size === 0) continue
+    const turned = pole.im !== 0
+    const c = turned ? size * cos(pole.im * time) : size
+    const s = turned ? size * sin(pole.im * time) : 0
+    const re = residue.re * c - residue.im * s
+    const im = residue.re * s + residue.im * c
+    value += re
+    slope += pole.re * re - pole.im * im
   }
   return { value, slope }
 }

@@ -75,22 +75,44 @@ const EXCESS = 1e-12
 
 function highest(s: Settled): Highest | 'unresolved' {
   let place = s.y.start()
-  let best: Highest = { time: 0, excess: relative(s, place.here).value }
+  let best: Highest = { time: 0, excess: Math.max(EXCESS, relative(s, place.here).value) }
   for (let count = 0; place.time < s.until; count++) {
     if (count > STEPS) return 'unresolved'
     if (s.y.envelope && s.y.envelope(place.time) <= best.excess * Math.abs(s.final)) break
-    const by = s.y.stepAt(place.time)
-    const next = place.next(by)
+    const next = place.next(stepBelow(s, place, best.excess))
     const top = topWithin(s, place, next, best.excess)
     if (top && top.excess > best.excess) best = top
     place = next
   }
-  return best.excess > EXCESS ? best : { time: best.time, excess: 0 }
+  return best.excess > EXCESS ? best : { time: 0, excess: 0 }
 }
 
 /** Deviation from the final value as a part of it, and its slope. */
 function relative(s: Settled, sample: Sample): Sample {
   return { value: sample.value / s.final - 1, slope: sample.slope / s.final }
+}
+
+/**
+ * The next step forward: the ordinary one, or a longer one within which the bound on the curvature
+ * rules out that the response turns round or comes above a level. This passes quickly over the long
+ * ringing of a fast mode that hardly matters.
+ */
+function stepBelow(s: Settled, place: Place, level: number): number {
+  const ordinary = s.y.stepAt(place.time)
+  const curvature = s.y.curvatureEnvelope?.(place.time)
+  if (curvature === undefined) return ordinary
+  const { value, slope } = relative(s, place.here)
+  const most = curvature / Math.abs(s.final)
+  const straight = Math.abs(slope) / most
+  const below = safeAhead(level - value, slope, most)
+  return Math.min(Math.max(ordinary, straight, below), Math.max(ordinary, s.until - place.time))
+}
+
+/** The largest h for which slope·h + curvature·h²/2 stays within the room. */
+function safeAhead(room: number, slope: number, curvature: number): number {
+  if (!(room > 0)) return 0
+  const root = Math.sqrt(slope * slope + 2 * curvature * room)
+  return slope > 0 ? 2 * room / (slope + root) : (root - slope) / curvature
 }
 
 /** The maximum between two places, if the slope changes from rising to falling there and it can exceed a level. */
@@ -132,7 +154,7 @@ function firstReach(s: Settled, part: number): number | undefined {
   if (relative(s, place.here).value >= level) return 0
   for (let count = 0; count <= STEPS && place.time <= s.until; count++) {
     const from = place
-    const to = from.next(s.y.stepAt(from.time))
+    const to = from.next(stepBelow(s, from, level))
     const short = (x: number) => relative(s, sampleAhead(from, to, x)).value - level
     const by = to.time - from.time
     const top = topWithin(s, from, to, level)
@@ -182,16 +204,9 @@ function lastFromEnvelope(s: Settled, band: number): number | undefined {
   return undefined
 }
 
-/** How far back |value − slope·h| + curvature·h²/2 stays within the limit, on either side. */
+/** How far back the distance from the final value stays within the limit, on either side. */
 function safeStep(off: Sample, limit: number, curvature: number): number {
-  let least = Infinity
-  for (const sign of [1, -1]) {
-    const room = Math.max(0, limit - sign * off.value)
-    const slope = -sign * off.slope
-    const root = Math.sqrt(slope * slope + 2 * curvature * room)
-    least = Math.min(least, slope > 0 ? 2 * room / (slope + root) : (root - slope) / curvature)
-  }
-  return least
+  return Math.min(safeAhead(limit - off.value, -off.slope, curvature), safeAhead(limit + off.value, off.slope, curvature))
 }
 
 /** Forward to where all has died away, keeping the last crossing, which alone is then closed in on. */
