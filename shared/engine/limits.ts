@@ -13,7 +13,7 @@ export const LIMITS = {
   /** Nodes that one line compiles to, with the functions that it calls written out. */
   compiledNodes: 20_000,
   /** Weighted steps that one line may take to evaluate, its tolerance search included. */
-  steps: 3_000_000,
+  steps: 30_000_000,
   /** Order of a transfer function, numerator or denominator. */
   order: 60,
 } as const

@@ -1,6 +1,6 @@
 /** Comparisons: as conditions of a choice, and taken apart for requirements (L13). */
 import { fault } from '../fault'
-import type { ScalarKind } from '../quantity/kind'
+import type { ListKind, ScalarKind } from '../quantity/kind'
 import type { Comparison } from '../syntax/node'
 import { describe } from './describe'
 import { capital, elementKind, operand } from './operands'
@@ -9,7 +9,6 @@ import { agree, levelMismatch, sum, temperatureMisuse } from './sums'
 import type { Term } from './term'
 import { asNumber } from './term'
 import { written } from './writeOut'
-import type { ListKind } from '../quantity/kind'
 
 /** One relation of a comparison: `difference` is what should be larger less what should be smaller. */
 export interface Relation {

@@ -17,17 +17,33 @@ export interface SearchRequest {
   effort: number
 }
 
-interface Budget { edgePoints: number, inside: number, starts: number, rounds: number, grid: number, golden: number }
-
-/** Cheap values are searched more finely than figures that take a thousand times as long. */
-function budgetFor(effort: number): Budget {
-  if (effort < 400) return { edgePoints: 9, inside: 128, starts: 4, rounds: 4, grid: 9, golden: 42 }
-  if (effort < 2500) return { edgePoints: 3, inside: 32, starts: 2, rounds: 2, grid: 5, golden: 24 }
-  return { edgePoints: 1, inside: 8, starts: 1, rounds: 1, grid: 3, golden: 12 }
+interface Budget {
+  /** Points along each edge, where there are few variables. */
+  edgePoints: number
+  /** Points inside the box. */
+  inside: number
+  /** Samples to refine, rounds for each, points and golden sections of a line search. */
+  starts: number
+  rounds: number
+  grid: number
+  golden: number
 }
 
+/** Cheap values are searched more finely than figures that take a hundred times as long. */
+function budgetFor(effort: number): Budget {
+  if (effort < CHEAP) return { edgePoints: 7, inside: 40, starts: 4, rounds: 4, grid: 7, golden: 40 }
+  if (effort < COSTLY) return { edgePoints: 3, inside: 16, starts: 2, rounds: 3, grid: 5, golden: 24 }
+  return { edgePoints: 0, inside: 6, starts: 1, rounds: 2, grid: 3, golden: 12 }
+}
+
+const CHEAP = 1000
+const COSTLY = 5000
+
+/** Part of a line, or of a grid step, that tells which way it runs at its end. */
+const NEAR = 1e-3
+
 const CORNERS_UP_TO = 10
-const EDGES_UP_TO = 5
+const EDGES_UP_TO = 3
 
 interface Sample { position: number[], value: number }
 
@@ -48,7 +64,9 @@ function searchOne(request: SearchRequest, base: readonly number[], sense: 1 | -
   const better = (a: number, b: number) => sense * a > sense * b
   const ranked = [...samples].sort((a, b) => sense * (b.value - a.value))
   let best = ranked[0]?.value ?? NaN
-  for (const start of ranked.slice(0, budget.starts)) {
+  // Where every edge of the box runs the same way as its parallels and nothing inside is better, one start will do.
+  const starts = looksMonotone(ranked, samples) ? 1 : budget.starts
+  for (const start of ranked.slice(0, starts)) {
     const refined = refine(start, budget, evaluate, better)
     if (better(refined, best)) best = refined
   }
@@ -69,8 +87,8 @@ function placed({ variables, open }: SearchRequest, base: readonly number[], pos
 function sampleBox(n: number, budget: Budget, evaluate: (position: readonly number[]) => number): Sample[] {
   const samples: Sample[] = []
   const add = (position: number[]) => samples.push({ position, value: evaluate(position) })
-  add(Array.from({ length: n }, () => 0.5))
   for (const corner of cornersOf(n)) add(corner)
+  add(Array.from({ length: n }, () => 0.5))
   if (n <= EDGES_UP_TO) for (const position of edgesOf(n, budget.edgePoints)) add(position)
   for (let k = 1; k <= budget.inside; k += 1) add(additive(n, k))
   return samples
@@ -125,33 +143,64 @@ function generalGoldenRatio(n: number): number {
 
 type Better = (a: number, b: number) => boolean
 
-/** Line searches along each axis, and along the diagonals of each pair, where ridges run. */
+/** Whether the corners are ordered as those of a function that rises or falls in each variable, the best of all samples among them. */
+function looksMonotone(ranked: readonly Sample[], samples: readonly Sample[]): boolean {
+  const isCorner = (sample: Sample) => sample.position.every(x => x === 0 || x === 1)
+  const [best] = ranked
+  if (!best || !isCorner(best)) return false
+  const corners = new Map(samples.filter(isCorner).map(sample => [sample.position.join(''), sample.value]))
+  return best.position.every((_, axis) => {
+    let [rises, falls] = [false, false]
+    for (const [key, value] of corners) {
+      const other = key[axis] === '0' ? corners.get(`${key.slice(0, axis)}1${key.slice(axis + 1)}`) : undefined
+      if (other === undefined) continue
+      if (other > value) rises = true
+      if (other < value) falls = true
+    }
+    return !(rises && falls)
+  })
+}
+
+/**
+ * Line searches along each axis; once an extremum lies inside, where ridges run, also along the
+ * diagonals of each pair. A start whose every line falls away from it takes a single round.
+ */
 function refine(start: Sample, budget: Budget, evaluate: (position: readonly number[]) => number, better: Better): number {
   const current = { position: [...start.position], value: start.value }
-  const directions = directionsOf(start.position.length)
+  const n = start.position.length
+  let inside = false
   for (let round = 0; round < budget.rounds; round += 1) {
     const before = current.value
-    for (const direction of directions) lineSearch(current, direction, budget, evaluate, better)
+    for (const direction of inside ? [...axes(n), ...diagonals(n)] : axes(n)) {
+      if (lineSearch(current, direction, budget, evaluate, better)) inside = true
+    }
     if (current.value === before) break
   }
   return current.value
 }
 
-function directionsOf(n: number): number[][] {
-  const axes = Array.from({ length: n }, (_, i) => Array.from({ length: n }, (__, j) => i === j ? 1 : 0))
-  if (n > 6) return axes
-  const diagonals: number[][] = []
-  for (let i = 0; i < n; i += 1) {
-    for (let j = i + 1; j < n; j += 1) {
-      for (const sign of [1, -1]) diagonals.push(Array.from({ length: n }, (_, k) => k === i ? 1 : k === j ? sign : 0))
-    }
-  }
-  return [...axes, ...diagonals]
+function axes(n: number): number[][] {
+  return Array.from({ length: n }, (_, i) => Array.from({ length: n }, (__, j) => i === j ? 1 : 0))
 }
 
-function lineSearch(current: Sample, direction: readonly number[], budget: Budget, evaluate: (position: readonly number[]) => number, better: Better): void {
+/** Of many variables too many to be searched. */
+const DIAGONALS_UP_TO = 5
+
+function diagonals(n: number): number[][] {
+  const found: number[][] = []
+  if (n > DIAGONALS_UP_TO) return found
+  for (let i = 0; i < n; i += 1) {
+    for (let j = i + 1; j < n; j += 1) {
+      for (const sign of [1, -1]) found.push(Array.from({ length: n }, (_, k) => k === i ? 1 : k === j ? sign : 0))
+    }
+  }
+  return found
+}
+
+/** Moves to the best point of a line. Returns whether it lies between the ends of the line. */
+function lineSearch(current: Sample, direction: readonly number[], budget: Budget, evaluate: (position: readonly number[]) => number, better: Better): boolean {
   const [from, to] = reach(current.position, direction)
-  if (!(to > from)) return
+  if (!(to > from)) return false
   const origin = current.position
   const at = (t: number) => origin.map((x, i) => Math.min(1, Math.max(0, x + (direction[i] ?? 0) * t)))
   const take = (t: number, value: number) => {
@@ -168,7 +217,11 @@ function lineSearch(current: Sample, direction: readonly number[], budget: Budge
     take(t, value)
     if (better(value, peak.value)) peak = { t, value }
   }
+  const inward = peak.t <= from ? step : peak.t >= to ? -step : 0
+  // An end of the line is an extremum unless the first step inwards is better still.
+  if (inward !== 0 && !better(evaluate(at(peak.t + inward * NEAR)), peak.value)) return false
   golden(Math.max(from, peak.t - step), Math.min(to, peak.t + step), budget.golden, t => evaluate(at(t)), better, take)
+  return true
 }
 
 /** How far the position can move along the direction within the unit cube. */
