@@ -21,5 +21,5 @@ export const useNotices = defineStore('notices', () => {
     if (tone !== 'problem') setTimeout(close, STAY_MS, id)
   }
 
-  return { notices: readonly(notices), say, close }
+  return { notices, say, close }
 })

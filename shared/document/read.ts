@@ -1,7 +1,13 @@
 /** What the head of a sheet says: requirements by number, holds, lines in error. Pure. */
 import type { LineResult, RequirementBarrier, SheetResult, Verdict } from '../engine/types'
 import { holds } from './lines'
-import type { SheetDocument } from './types'
+import type { LineNode, LinesBlock, SheetBlock, SheetDocument } from './types'
+
+export const isLinesBlock = (block: SheetBlock): block is LinesBlock => block.type === 'calculation' || block.type === 'requirements'
+
+/** What was typed in a line; two sources, as a merge may leave them, are both read. */
+export const lineSource = (line: LineNode): string => (line.content ?? []).filter(child => child.type === 'source')
+  .map(child => (child.content ?? []).map(text => text.text).join('')).join(' ').trim()
 
 export const resultsById = (results: SheetResult): Map<string, LineResult> => new Map(results.lines.map(line => [line.id, line]))
 
