@@ -1,13 +1,16 @@
 /** The engine behind messages: nothing is decided here. The queue and the watch over time are in composables/useEngineQueue.ts. */
-import { createSheetEngine } from '#shared/engine'
-import type { LineResult } from '#shared/engine/types'
+import { createSheetEngine, sheetCautions } from '#shared/engine'
+import type { LineResult, SheetResult } from '#shared/engine/types'
 import type { EngineQuestion, EngineReply } from './messages'
 
 const engine = createSheetEngine({ significantDigits: 4 })
+let latest: SheetResult = { lines: [] }
 let sent = new Map<string, LineResult>()
 
 /** Results that are not the ones sent before; the engine hands out the same object for what did not change. */
-function changedResults(lines: readonly LineResult[]): LineResult[] {
+function changedResults(result: SheetResult): LineResult[] {
+  latest = result
+  const { lines } = result
   const changed = lines.filter(line => sent.get(line.id) !== line)
   sent = new Map(lines.map(line => [line.id, line]))
   return changed
@@ -15,12 +18,12 @@ function changedResults(lines: readonly LineResult[]): LineResult[] {
 
 function answer({ call, question }: EngineQuestion) {
   switch (call) {
-    case 'evaluate': return changedResults(engine.evaluate(question).lines)
+    case 'evaluate': return changedResults(engine.evaluate(question))
     case 'response': return engine.response(question)
     case 'step': return engine.step(question)
     case 'typeset': return latexOf(question)
     case 'expression': return problemOf(question)
-    case 'cautions': return []
+    case 'cautions': return sheetCautions(engine, latest, question)
   }
 }
 

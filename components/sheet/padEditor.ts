@@ -1,4 +1,5 @@
 /** The editor of one sheet, and what follows from each change of text or caret. */
+import type { EditorOptions } from '@tiptap/core'
 import { Editor } from '@tiptap/vue-3'
 import type { Awareness } from 'y-protocols/awareness'
 import type { XmlFragment } from 'yjs'
@@ -35,6 +36,20 @@ const DOCUMENT_EVERY = 250
 /** The schema is that of a sheet (its round trip is tested), so that its JSON is a sheet's. */
 const documentOf = (editor: Editor) => editor.getJSON() as unknown as SheetDocument
 
+function makeEditor(options: PadEditorOptions, events: Partial<EditorOptions>): Editor {
+  return new Editor({
+    ...events,
+    editable: options.editable(),
+    extensions: sheetExtensions({ ...options, responseView: BlockResponse, figureView: BlockFigure }),
+    editorProps: {
+      attributes: { 'class': 'pad-editor', 'aria-label': 'Sheet', 'aria-multiline': 'true', 'role': 'textbox' },
+      handlePaste: (_view, event) => options.takePictures(imageFiles(event.clipboardData)),
+      handleDrop: (view, event, _slice, moved) => !moved && options.takePictures(
+        imageFiles(event.dataTransfer), view.posAtCoords({ left: event.clientX, top: event.clientY })?.pos),
+    },
+  })
+}
+
 export function usePadEditor(options: PadEditorOptions) {
   const { hub, engine } = options
   const empty = ref(false)
@@ -65,15 +80,7 @@ export function usePadEditor(options: PadEditorOptions) {
     void speak(editor)
   }
 
-  const editor = new Editor({
-    editable: options.editable(),
-    extensions: sheetExtensions({ ...options, responseView: BlockResponse, figureView: BlockFigure }),
-    editorProps: {
-      attributes: { 'class': 'pad-editor', 'aria-label': 'Sheet', 'aria-multiline': 'true', 'role': 'textbox' },
-      handlePaste: (_view, event) => options.takePictures(imageFiles(event.clipboardData)),
-      handleDrop: (view, event, _slice, moved) => !moved && options.takePictures(
-        imageFiles(event.dataTransfer), view.posAtCoords({ left: event.clientX, top: event.clientY })?.pos),
-    },
+  const editor = makeEditor(options, {
     onTransaction: ({ editor: at, transaction }) => { if (transaction.docChanged) changed(at as Editor) },
     onSelectionUpdate: ({ editor: at }) => stand(at as Editor),
     onFocus: ({ editor: at }) => stand(at as Editor),

@@ -72,3 +72,14 @@ export const Identity = Extension.create({
     new Plugin({ key: new PluginKey('identity'), appendTransaction: giveIds }),
   ],
 })
+
+/** While one only reads, nothing leaves this browser: not even what the editor would put in order by itself. */
+export const OnlyRead = Extension.create({
+  name: 'onlyRead',
+  addProseMirrorPlugins() {
+    return [new Plugin({
+      key: new PluginKey('onlyRead'),
+      filterTransaction: transaction => !transaction.docChanged || this.editor.isEditable || isChangeOrigin(transaction),
+    })]
+  },
+})

@@ -8,7 +8,7 @@ import type { XmlFragment } from 'yjs'
 import type { Component } from 'vue'
 import { Blocks } from './blocks'
 import { Figure, Response } from './atoms'
-import { Identity } from './identity'
+import { Identity, OnlyRead } from './identity'
 import { InlineMath } from './inlineMath'
 import { LineKeys } from './lineKeys'
 import { lineExtensions } from './lines'
@@ -48,6 +48,7 @@ export function sheetExtensions(options: SheetExtensionOptions): Extensions {
   return [
     ...documentExtensions(options.hub, { response: options.responseView, figure: options.figureView }),
     Identity,
+    OnlyRead,
     LineKeys,
     PasteLines,
     Blocks.configure({ openInsert: options.openInsert }),
