@@ -5,6 +5,8 @@ const id = z.string()
 const hash = z.string().regex(/^[0-9a-f]{64}$/)
 const project = z.strictObject({ project: id })
 const revision = z.strictObject({ project: id, sheet: id, revision: id })
+const person = z.strictObject({ person: id })
+const organisation = z.strictObject({ organisation: id })
 const nothing = z.strictObject({})
 const signed = { submission: id, signature: id, hash }
 
@@ -32,6 +34,13 @@ export const auditEventSchema = z.discriminatedUnion('event', [
   entry('checker_reassigned', revision, z.strictObject({ submission: id, from: id, to: id, due: z.string().nullable() })),
   entry('annotation_raised', revision, z.strictObject({ annotation: id, number: z.number(), kind: z.string() })),
   entry('annotation_closed', revision, z.strictObject({ annotation: id, number: z.number() })),
+  entry('person_invited', person, z.strictObject({ roles: z.array(z.string()), organisationId: id.nullable() })),
+  entry('person_invited_again', person, nothing),
+  entry('person_changed', person, z.strictObject({ changed: z.record(z.string(), z.unknown()) })),
+  entry('account_opened', person, nothing),
+  entry('password_changed', person, z.strictObject({ by: z.enum(['link', 'person']) })),
+  entry('organisation_created', organisation, z.strictObject({ name: z.string() })),
+  entry('organisation_renamed', organisation, z.strictObject({ name: z.string() })),
   entry('annotation_reopened', revision, z.strictObject({ annotation: id, number: z.number() })),
 ])
 export type AuditEvent = z.infer<typeof auditEventSchema>

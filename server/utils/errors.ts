@@ -1,7 +1,6 @@
 /** The refusals that a route may answer with. One shape: {statusCode, statusMessage, data: {code, field?, help}}. */
 import { createError } from 'h3'
 import type { H3Error } from 'h3'
-import type { Ability } from '#shared/types/api'
 
 export interface RefusalData {
   /** Stable, for programs. */
@@ -41,8 +40,3 @@ export const tooManyTries = (seconds: number, help?: string) =>
   refusal(429, { code: 'too_many_tries', help: help ?? `Too many tries. Wait ${seconds} s and try again.`, details: { seconds } })
 
 export const unavailable = (help: string) => refusal(503, { code: 'unavailable', help })
-
-/** Turns a policy's no into 403 in its own words. */
-export function enforce(ability: Ability): void {
-  if (!ability.may) throw notAllowed(ability.why)
-}

@@ -4,9 +4,9 @@ import { renameOrganisation } from '../../commands/people/organisations'
 
 export default defineEventHandler(async (event) => {
   const actor = await requireActor(event)
-  enforce(mayManagePeople(actor))
+  authorise(mayManagePeople(actor))
   const { id } = paramsOf(event, idParams)
   const { name } = await bodyOf(event, organisationSchema)
-  await renameOrganisation(id, name)
+  await renameOrganisation(actor, id, name)
   return clientView(id)
 })

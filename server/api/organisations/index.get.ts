@@ -3,6 +3,6 @@ import { mayManagePeople } from '#shared/policies/people'
 /** The firm's clients. */
 export default defineEventHandler(async (event) => {
   const actor = await requireActor(event)
-  enforce(mayManagePeople(actor))
+  authorise(mayManagePeople(actor))
   return clientViews()
 })

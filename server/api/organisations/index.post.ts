@@ -4,9 +4,9 @@ import { createOrganisation } from '../../commands/people/organisations'
 
 export default defineEventHandler(async (event) => {
   const actor = await requireActor(event)
-  enforce(mayManagePeople(actor))
+  authorise(mayManagePeople(actor))
   const { name } = await bodyOf(event, organisationSchema)
-  const id = await createOrganisation(name)
+  const id = await createOrganisation(actor, name)
   setResponseStatus(event, 201)
   return clientView(id)
 })

@@ -4,7 +4,7 @@ import { updatePerson } from '../../commands/people/updatePerson'
 
 export default defineEventHandler(async (event) => {
   const actor = await requireActor(event)
-  enforce(mayManagePeople(actor))
+  authorise(mayManagePeople(actor))
   const { id } = paramsOf(event, idParams)
   await updatePerson(actor, id, await bodyOf(event, updatePersonSchema))
   return personView(id)

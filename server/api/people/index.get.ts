@@ -4,7 +4,7 @@ import { presentPerson } from '../../presenters/people'
 
 export default defineEventHandler(async (event) => {
   const actor = await requireActor(event)
-  enforce(mayManagePeople(actor))
+  authorise(mayManagePeople(actor))
   const users = await User.findAll({ include: withBelonging, order: [['name', 'ASC'], ['id', 'ASC']] })
   return users.map(presentPerson)
 })

@@ -5,7 +5,7 @@ import { invitePerson } from '../../commands/people/invitePerson'
 /** Invites a person by e-mail. */
 export default defineEventHandler(async (event) => {
   const actor = await requireActor(event)
-  enforce(mayManagePeople(actor))
+  authorise(mayManagePeople(actor))
   const input = await bodyOf(event, invitePersonSchema)
   const id = await invitePerson(actor, input)
   setResponseStatus(event, 201)

@@ -2,11 +2,12 @@ import type { Transaction } from 'sequelize'
 import type { Actor } from '#shared/policies/actor'
 import type { InvitePerson } from '#shared/schemas/people'
 import type { Role } from '#shared/types/api'
-import { isDuplicate, Organisation, User, UserRole, withTransaction } from '../../database'
+import { isDuplicate, Organisation, User, UserRole } from '../../database'
+import { queueLetter } from '../../jobs/queue'
 import { badInput, conflict, notFound } from '../../utils/errors'
 import { newId } from '../../utils/ids'
+import { runCommand } from '../run'
 import { createLink } from './links'
-import { queueLetter } from './post'
 
 /** Gives a person exactly these roles, in this order. */
 export async function setRoles(userId: string, roles: readonly Role[], transaction: Transaction): Promise<void> {
@@ -33,7 +34,7 @@ async function sendInvitation(actor: Actor, user: User, transaction: Transaction
 /** Makes an account without a password and sends its owner a link to choose one. Returns the new person's id. */
 export async function invitePerson(actor: Actor, input: InvitePerson): Promise<string> {
   try {
-    return await withTransaction(async (transaction) => {
+    return await runCommand(async (transaction, effects) => {
       if (input.organisationId) await requireClient(input.organisationId, transaction)
       const user = await User.create({
         id: newId(),
@@ -44,6 +45,7 @@ export async function invitePerson(actor: Actor, input: InvitePerson): Promise<s
       }, { transaction })
       await setRoles(user.id, input.roles, transaction)
       await sendInvitation(actor, user, transaction)
+      effects.audit.push({ event: 'person_invited', actorId: actor.id, subject: { person: user.id }, data: { roles: input.roles, organisationId: user.organisationId } })
       return user.id
     })
   }
@@ -55,11 +57,12 @@ export async function invitePerson(actor: Actor, input: InvitePerson): Promise<s
 
 /** Sends another invitation; the link of the earlier one stops working. */
 export async function inviteAgain(actor: Actor, userId: string): Promise<void> {
-  await withTransaction(async (transaction) => {
+  await runCommand(async (transaction, effects) => {
     const user = await User.findByPk(userId, { lock: transaction.LOCK.UPDATE, transaction })
     if (!user) throw notFound('There is no such person.')
     if (user.passwordHash) throw conflict('already_active', `${user.name} has accepted the invitation already.`)
     if (user.disabledAt) throw conflict('disabled', `${user.name}'s account is disabled. Enable it first.`)
     await sendInvitation(actor, user, transaction)
+    effects.audit.push({ event: 'person_invited_again', actorId: actor.id, subject: { person: user.id }, data: {} })
   })
 }

@@ -3,12 +3,12 @@ import type { Transaction } from 'sequelize'
 import type { Actor } from '#shared/policies/actor'
 import type { UpdatePerson } from '#shared/schemas/people'
 import type { Role } from '#shared/types/api'
-import { OneTimeLink, sequelize, Session, User, UserRole, withTransaction } from '../../database'
+import { OneTimeLink, sequelize, Session, User, UserRole } from '../../database'
 import { badInput, conflict, notFound } from '../../utils/errors'
-import { revocations } from '../../utils/revocation'
+import { runCommand } from '../run'
 import { requireClient, setRoles } from './invitePerson'
 
-/** Ends every session of a person, except one that goes on. The caller tells `revocations` after COMMIT. */
+/** Ends every session of a person, except one that goes on. The command's effects tell open connections. */
 export async function endSessionsOf(userId: string, transaction: Transaction, exceptSession?: string): Promise<void> {
   const except = exceptSession ? { id: { [Op.ne]: exceptSession } } : {}
   await Session.update({ revokedAt: new Date() }, { where: { userId, revokedAt: null, ...except }, transaction })
@@ -63,7 +63,7 @@ async function disable(actor: Actor, user: User, transaction: Transaction): Prom
 
 /** Changes a person's name, roles or state. Disabling ends their sessions at once; what they wrote and signed stays. */
 export async function updatePerson(actor: Actor, userId: string, input: UpdatePerson): Promise<void> {
-  await withTransaction(async (transaction) => {
+  await runCommand(async (transaction, effects) => {
     const user = await User.findByPk(userId, { lock: transaction.LOCK.UPDATE, transaction })
     if (!user) throw notFound('There is no such person.')
     if (input.name !== undefined) user.name = input.name
@@ -72,6 +72,7 @@ export async function updatePerson(actor: Actor, userId: string, input: UpdatePe
     if (input.disabled === true) await disable(actor, user, transaction)
     if (input.disabled === false) user.disabledAt = null
     await user.save({ transaction })
+    effects.audit.push({ event: 'person_changed', actorId: actor.id, subject: { person: userId }, data: { changed: input } })
+    if (input.disabled || input.roles) effects.revoked.push({ kind: 'user', id: userId })
   })
-  if (input.disabled || input.roles) revocations.emit({ kind: 'user', id: userId })
 }

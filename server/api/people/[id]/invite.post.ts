@@ -5,7 +5,7 @@ import { inviteAgain } from '../../../commands/people/invitePerson'
 /** Sends the invitation anew; the earlier link stops working. */
 export default defineEventHandler(async (event) => {
   const actor = await requireActor(event)
-  enforce(mayManagePeople(actor))
+  authorise(mayManagePeople(actor))
   const { id } = paramsOf(event, idParams)
   await inviteAgain(actor, id)
   setResponseStatus(event, 204)
