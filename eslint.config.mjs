@@ -60,7 +60,7 @@ export default withNuxt(
   },
   {
     name: 'polewright/command-line',
-    files: ['scripts/**'],
+    files: ['scripts/**', 'tests/access/**'],
     rules: { 'no-console': 'off' },
   },
 )
