@@ -32,12 +32,14 @@ function spawnWorker(reply: (reply: EngineReply) => void, failed: (message: stri
   return { post: (question: unknown) => worker.postMessage(question), terminate: () => worker.terminate() }
 }
 
-export function useEngine(onResults: (results: LineResult[]) => void): SheetEngineClient {
+/** `patience` is the longest time of one answer, ms; a sheet that nobody is typing in may take longer. */
+export function useEngine(onResults: (results: LineResult[]) => void, { patience }: { patience?: number } = {}): SheetEngineClient {
   const round = ref(0)
   let names = ''
   const typesetMemory = new Map<string, Promise<string | null>>()
   const queue: EngineQueue = createEngineQueue({
     spawn: spawnWorker,
+    patience,
     onResults: (results) => {
       const now = results.map(result => result.defines ?? '').join(' ')
       // Whether a word is a name or a unit depends on what the sheet defines.

@@ -6,6 +6,8 @@ import type { SheetEngineClient } from './useEngine'
 
 const CURVE_POINTS = 400
 const STEP_POINTS = 400
+/** Nobody is typing, so the engine may take its time, ms. */
+const PATIENCE = 30_000
 
 export interface BlockFigures { response: ResponseFigures | null, step: StepFigures | null, failed: string | null }
 
@@ -65,7 +67,7 @@ export function usePaperFigures(document: () => SheetDocument, settings: () => E
   }
 
   onMounted(() => {
-    engine = useEngine(() => {})
+    engine = useEngine(() => {}, { patience: PATIENCE })
     void draw()
   })
   watch(document, () => { void draw() })
