@@ -81,7 +81,12 @@ export class Sheet {
     const reusable = before && before.source === source && before.digits === this.digits && before.context === context
     const kept = reusable ? before : this.anew(id, source, context, parsed, index)
     const name = this.nameAt(parsed, source)
-    if (kept.computed.entity && name !== undefined) this.names.set(name, { entity: kept.computed.entity, version: kept.version, line: index + 1 })
+    const { entity } = kept.computed
+    if (entity && name !== undefined) {
+      // A kept line may have moved since it failed.
+      const current: Entity = entity.type === 'failed' ? { type: 'failed', line: index + 1 } : entity
+      this.names.set(name, { entity: current, version: kept.version, line: index + 1 })
+    }
     return kept.result
   }
 
@@ -129,14 +134,18 @@ export class Sheet {
 
   /** All that the meaning of a line hangs on besides its own text. */
   private contextOf(parsed: ParsedLine | Fault, source: string, index: number): string {
-    if (parsed instanceof Fault) return `unreadable ${index} ${this.nameAt(parsed, source) ?? ''}`
+    if (parsed instanceof Fault) {
+      const name = this.nameAt(parsed, source)
+      return `unreadable ${index} ${name === undefined ? '' : this.definitions.get(name)}`
+    }
     const words = [...new Set(parsed.words)].map((word) => {
       const defined = this.names.get(word)
       if (defined) return `${word}@${defined.version}${defined.entity.type === 'failed' ? `:${defined.line}` : ''}`
       const line = this.definitions.get(word)
       return line === undefined || line === index ? word : `${word}<${line}`
     })
-    const own = parsed.define && (this.definitions.get(parsed.define.name) ?? index) < index ? 'second' : ''
+    const first = parsed.define ? this.definitions.get(parsed.define.name) : undefined
+    const own = first !== undefined && first < index ? `second of ${first}` : ''
     return `${words.join(' ')}|${own}`
   }
 
