@@ -78,7 +78,7 @@ const OTHER: Entry[] = [
   { symbol: 'Np', dimension: D.NONE, up: NEPER_DB, special: 'level', peculiar: true },
   { symbol: 'dBm', dimension: D.POWER, special: 'dBm' },
   { symbol: 'dBV', dimension: D.VOLTAGE, special: 'dBV' },
-  { symbol: 'dBuV', text: 'dBµV', latex: 'dB\\text{µ}V', dimension: D.VOLTAGE, special: 'dBuV' },
+  { symbol: 'dBuV', text: 'dBµV', latex: '\\mathrm{dB}\\mu\\mathrm{V}', dimension: D.VOLTAGE, special: 'dBuV' },
   { symbol: 'degC', text: '°C', latex: '{}^{\\circ}\\mathrm{C}', dimension: D.TEMPERATURE, special: 'point' },
   { symbol: 'min', dimension: D.TIME, up: 60, peculiar: true },
   { symbol: 'h', dimension: D.TIME, up: 3600, peculiar: true },
