@@ -3,6 +3,7 @@ import { EventEmitter } from 'node:events'
 import { QueryTypes, type Transaction } from 'sequelize'
 import { sequelize } from '../database'
 import type { Letter } from '../mail'
+import { now } from '../utils/clock'
 import { newId } from '../utils/ids'
 
 export interface NewJob {
@@ -25,8 +26,8 @@ export function onWork(listener: () => void): () => void {
 export async function queueJob(job: NewJob, transaction: Transaction): Promise<void> {
   await sequelize.query(
     `INSERT IGNORE INTO jobs (id, kind, unique_key, payload, state, attempts, run_after, created_at)
-     VALUES (:id, :kind, :key, :payload, 'waiting', 0, UTC_TIMESTAMP(3), UTC_TIMESTAMP(3))`,
-    { replacements: { id: newId(), kind: job.kind, key: job.uniqueKey, payload: JSON.stringify(job.payload) }, type: QueryTypes.INSERT, transaction },
+     VALUES (:id, :kind, :key, :payload, 'waiting', 0, :at, :at)`,
+    { replacements: { id: newId(), kind: job.kind, key: job.uniqueKey, payload: JSON.stringify(job.payload), at: now() }, type: QueryTypes.INSERT, transaction },
   )
 }
 
