@@ -19,7 +19,9 @@ const PASSWORD = 'a secret of the tests, of some forty characters'
 export async function launch(name: string): Promise<{ base: TestBase, stop: () => Promise<void> }> {
   const built = process.env.POLEWRIGHT_TEST_OUTPUT
   const entry = await ensureBuild({ output: resolve(ROOT, built || join(TEST_DATA, 'output')), buildDir: join(TEST_DATA, 'nuxt'), mayBeStale: Boolean(built) })
-  const mariadb = await startMariadb(process.env.POLEWRIGHT_TEST_MARIADB ?? join(DATA, 'development'))
+  // Remembered, since a test process that launches a server of its own has a data folder of its own.
+  process.env.POLEWRIGHT_TEST_MARIADB ??= join(DATA, 'development')
+  const mariadb = await startMariadb(process.env.POLEWRIGHT_TEST_MARIADB)
   const schema = `test_${name}_${process.pid}`
   mariadb.run(`DROP DATABASE IF EXISTS \`${schema}\`;`)
   mariadb.createSchema(schema)

@@ -1,5 +1,5 @@
 /** A firm in small, and the steps of a sheet through it as each person takes them: by the API. */
-import { expect } from 'vitest'
+import { expect, vi } from 'vitest'
 import { createClientOrganisation, createPerson, PASSWORD, signedIn, unique } from '../../helpers/people'
 import type { Person } from '../../helpers/people'
 import type { Client } from '../../helpers/client'
@@ -84,6 +84,9 @@ export async function bringToIssue(office: Office, revisionId: string): Promise<
 
 /** Resolves when the revision has come to `state`. */
 export async function reached(office: Office, revisionId: string, state: RevisionView['state']): Promise<RevisionView> {
-  await expect.poll(async () => (await revisionOf(office.manager, revisionId)).state, { timeout: 90_000, interval: 250 }).toBe(state)
-  return revisionOf(office.manager, revisionId)
+  return vi.waitFor(async () => {
+    const revision = await revisionOf(office.manager, revisionId)
+    expect(revision.state).toBe(state)
+    return revision
+  }, { timeout: 100_000, interval: 250 })
 }
