@@ -292,6 +292,8 @@ describe('margins', () => {
   it('are unbounded without a crossing', () => {
     expect(valueOf(gainMargin(lags(1, 2))).margin).toBe(Infinity)
     expect(valueOf(phaseMargin(multiply(k(0.5), lags(1)))).margin).toBe(Infinity)
+    // Real at its peak, but positive: no crossing.
+    expect(valueOf(gainMargin(divide(multiply(k(2), s), fromCoefficients([1, 0.2, 1])))).margin).toBe(Infinity)
   })
 
   it('of three equal lags are known', () => {
