@@ -3,6 +3,7 @@ import { CLOSE, MESSAGE_CHANGED, changedSchema, readOwnMessage } from '#shared/c
 
 /** How often the server is asked while its socket is silent or away: in milliseconds. */
 const ASK_EVERY = 4000
+const LASTED = 5000
 const TRY_AGAIN = [1000, 2000, 5000, 10_000, 20_000]
 
 /** What the frame says has changed; null for every other frame. */
@@ -14,12 +15,13 @@ export function changedIn(frame: ArrayBuffer): string | null {
 
 /**
  * Calls `changed` when the server says that the revision, its ticks or its annotations are other than they were.
- * The socket of a frozen revision says nothing else. While it is away, the server is asked every few seconds instead,
+ * The socket is told no epoch, so it carries such notices and no document. While it is away, the server is asked every few seconds instead,
  * as long as the page is looked at.
  */
-export function useRevisionEvents(revisionId: string, epoch: () => number, changed: () => Promise<void>) {
+export function useRevisionEvents(revisionId: string, changed: () => Promise<void>) {
   let socket: WebSocket | null = null
   let tries = 0
+  let opened = Number.POSITIVE_INFINITY
   let over = false
   let again: ReturnType<typeof setTimeout> | undefined
   const visible = useDocumentVisibility()
@@ -31,14 +33,17 @@ export function useRevisionEvents(revisionId: string, epoch: () => number, chang
   function connect() {
     if (over) return
     const scheme = location.protocol === 'https:' ? 'wss' : 'ws'
-    socket = new WebSocket(`${scheme}://${location.host}/collaboration/${revisionId}?epoch=${epoch()}`)
+    socket = new WebSocket(`${scheme}://${location.host}/collaboration/${revisionId}`)
     socket.binaryType = 'arraybuffer'
-    socket.onopen = () => { tries = 0 }
+    socket.onopen = () => { opened = Date.now() }
     socket.onmessage = (event: MessageEvent<unknown>) => {
       if (event.data instanceof ArrayBuffer && changedIn(event.data) !== null) void tell()
     }
     socket.onclose = (event) => {
       socket = null
+      // A connection that is refused at once opens too, so only one that lasted begins the count anew.
+      if (Date.now() - opened > LASTED) tries = 0
+      opened = Number.POSITIVE_INFINITY
       if (event.code === CLOSE.frozen || event.code === CLOSE.outdated) void tell()
       if (event.code === CLOSE.signedOut || event.code === CLOSE.noRight || event.code === CLOSE.notFound) over = true
       again = setTimeout(connect, TRY_AGAIN[Math.min(tries++, TRY_AGAIN.length - 1)])
