@@ -73,5 +73,5 @@ export function usePaperFigures(document: () => SheetDocument, settings: () => E
   watch(document, () => { void draw() })
   onBeforeUnmount(() => engine?.destroy())
 
-  return { figures: readonly(figures), maths: readonly(maths), cautions: readonly(cautions), ready: readonly(ready) }
+  return { figures: shallowReadonly(figures), maths: shallowReadonly(maths), cautions: shallowReadonly(cautions), ready: readonly(ready) }
 }

@@ -33,8 +33,15 @@ const LEADER_FROM = 22
 const DISTANCES = [6, 10, 16, 24, 34, 46, 62, 80, 102, 128, 160]
 const DIRECTIONS = 24
 
-/** Width of a label, px, with a little to spare: the mean advance of Barlow 500 is 0.52 em. */
-export const labelWidth = (text: string) => Math.ceil([...text].reduce((sum, letter) => sum + (/[ilj.,:·'|]/.test(letter) ? 0.32 : /[mwMW−–]/.test(letter) ? 0.8 : 0.57), 0) * FONT) + 2
+/** Mean advances of Barlow 500 in em by kind of letter, with a little to spare. */
+const ADVANCES: readonly [RegExp, number][] = [
+  [/[ ilj.,:·'|]/, 0.25], [/[tfr()/-]/, 0.35], [/[mwMWµ−–±]/, 0.76], [/[A-Z0-9%]/, 0.56],
+]
+const USUAL_ADVANCE = 0.5
+
+/** Width of a label, px: never less than it is drawn. */
+export const labelWidth = (text: string) =>
+  Math.ceil([...text].reduce((sum, letter) => sum + (ADVANCES.find(([letters]) => letters.test(letter))?.[1] ?? USUAL_ADVANCE), 0) * FONT) + 2
 
 const overlaps = (a: Box, b: Box, clear: number) =>
   a.x < b.x + b.width + clear && b.x < a.x + a.width + clear && a.y < b.y + b.height + clear && b.y < a.y + a.height + clear
