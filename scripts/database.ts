@@ -4,6 +4,7 @@
  *   tsx --tsconfig scripts/tsconfig.json scripts/database.ts                  brings the database up to date
  *   … --demonstration                                                         and fills an empty one with the demonstration
  *   … --demonstration-issues                                                  and carries it on as the server issues its sheets
+ *   … --invite-manager ADDRESS NAME SITE                                      and makes an account for a firm's first manager
  *   … --accounts                                                              says how to sign in to the demonstration
  */
 import { resolve } from 'node:path'
@@ -11,6 +12,7 @@ import { buildEngineProcess } from '../modules/engineProcess'
 import { DEMONSTRATION_EMAILS, DEMONSTRATION_PASSWORD } from '../shared/demonstration'
 import { homeOf, ROLE_LABELS } from '../shared/people'
 import { migrate, sequelize, User, UserRole } from '../server/database'
+import { loadDemonstration, needsDemonstration } from './lib/demonstration'
 
 const has = (option: string) => process.argv.includes(option)
 
@@ -23,11 +25,10 @@ async function provideEngine(): Promise<void> {
 
 async function prepare(): Promise<void> {
   for (const name of await migrate()) console.log(`Migrated ${name}`)
-  if (!has('--demonstration') || await User.count() > 0) return
+  if (!has('--demonstration') || !await needsDemonstration()) return
   console.log('Loading the demonstration …')
   await provideEngine()
-  const { seedDemonstration } = await import('../server/database/seed')
-  await seedDemonstration()
+  await loadDemonstration()
 }
 
 /** Needs a server on the same database, whose job makes the files. */
@@ -50,8 +51,26 @@ async function printAccounts(): Promise<void> {
   console.log('')
 }
 
+/** `--invite-manager ADDRESS NAME SITE` */
+async function inviteManager(): Promise<void> {
+  const [address = '', name = '', site = ''] = process.argv.slice(process.argv.indexOf('--invite-manager') + 1)
+  await migrate()
+  const { inviteFirstManager } = await import('../server/commands/people/firstManager')
+  const path = await inviteFirstManager(address, name)
+  console.log(`\nOpen this link within a week to choose the password. It works once:\n\n  ${site}${path}\n`)
+}
+
+/** A refusal's words are for the person at the keyboard; anything else keeps its stack. */
+function tell(error: unknown): void {
+  const { help } = (error as { data?: { help?: string } }).data ?? {}
+  if (help === undefined) throw error
+  console.error(help)
+  process.exitCode = 1
+}
+
 try {
-  if (has('--accounts')) await printAccounts()
+  if (has('--invite-manager')) await inviteManager().catch(tell)
+  else if (has('--accounts')) await printAccounts()
   else if (has('--demonstration-issues')) await carryOn()
   else await prepare()
 }

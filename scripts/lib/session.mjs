@@ -26,4 +26,10 @@ export async function claimRun(stack) {
   return (url, server) => writePrivateJson(FILE, { pid: process.pid, url, server })
 }
 
+/** Where a run of this data folder answers; null when there is none. */
+export function runningSite() {
+  const other = readJson(FILE)
+  return other && isAlive(other.pid) ? other.url ?? null : null
+}
+
 export const wantsDemonstration = () => process.env.POLEWRIGHT_DEMONSTRATION !== 'no'
