@@ -31,9 +31,12 @@ export function pressMatches(event: KeyboardEvent, keys: string): boolean {
     && (plain ? pressed.toUpperCase() === key.toUpperCase() : pressed === key)
 }
 
-/** Offers the actions of `list` until the component leaves. The getter is read each time, so reasons and labels stay true. */
-export function useActions(list: () => readonly Action[]) {
-  onMounted(() => { offers.value = [...offers.value, list] })
+/**
+ * Offers the actions of `list` until the component leaves. The getter is read each time, so reasons and labels stay true.
+ * Those `everywhere` stand below the ones of the page, which are what one usually looks for.
+ */
+export function useActions(list: () => readonly Action[], { everywhere = false } = {}) {
+  onMounted(() => { offers.value = everywhere ? [...offers.value, list] : [list, ...offers.value] })
   onBeforeUnmount(() => { offers.value = offers.value.filter(offer => offer !== list) })
 }
 
