@@ -169,6 +169,31 @@ describe('keeping people', () => {
   })
 })
 
+describe('the first manager', () => {
+  it('is made by whoever runs the server, while nobody can sign in as one', async () => {
+    const { inviteFirstManager } = await import('../../server/commands/people/firstManager')
+    const address = `${unique('m')}@polewright.example`
+    const managers = (await UserRole.findAll({ where: { role: 'manager' } })).map(row => row.userId)
+    await User.update({ disabledAt: new Date() }, { where: { id: managers } })
+    try {
+      const first = await inviteFirstManager(address, 'Ruth Osei')
+      const path = await inviteFirstManager(address, 'Ruth Osei')
+      const [visitor, token] = [new Client(), path.split('/').pop()]
+      expect((await visitor.get(`/api/auth/invitation?token=${first.split('/').pop()}`)).status).toBe(404)
+      expect((await visitor.post<SessionView>('/api/auth/accept-invitation', { token, password: PASSWORD })).body).toMatchObject({ home: '/board' })
+      await expect(inviteFirstManager(`${unique('m')}@polewright.example`, 'Someone Else')).rejects.toMatchObject({ data: { code: 'has_manager' } })
+    }
+    finally {
+      await User.update({ disabledAt: null }, { where: { id: managers } })
+    }
+  })
+
+  it('has a proper address', async () => {
+    const { inviteFirstManager } = await import('../../server/commands/people/firstManager')
+    await expect(inviteFirstManager('no address', 'Ruth Osei')).rejects.toMatchObject({ data: { field: 'email' } })
+  })
+})
+
 describe('clients', () => {
   it('are created, renamed and listed with their people', async () => {
     const boss = await manager()
