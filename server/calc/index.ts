@@ -38,7 +38,7 @@ function openChild(path: string): ChildProcess {
   return fresh
 }
 
-function ask<C extends CalcCall>(process: ChildProcess, question: CalcQuestion & { call: C }): Promise<CalcCalls[C]> {
+function ask<C extends CalcCall>(process: ChildProcess, question: CalcQuestion & { call: C }, limit: number): Promise<CalcCalls[C]> {
   return new Promise((resolve, reject) => {
     const settle = (act: () => void) => {
       clearTimeout(timer)
@@ -52,9 +52,9 @@ function ask<C extends CalcCall>(process: ChildProcess, question: CalcQuestion &
     }
     const onExit = () => settle(() => reject(new ComputationOverrun('The sheet needs more memory than a sheet may.')))
     const timer = setTimeout(() => {
-      settle(() => reject(new ComputationOverrun(`The sheet takes more than ${LIMIT_MS / 1000} s to compute.`)))
+      settle(() => reject(new ComputationOverrun(`The sheet takes more than ${limit / 1000} s to compute.`)))
       endChild()
-    }, LIMIT_MS)
+    }, limit)
     process.on('message', onMessage)
     process.once('exit', onExit)
     process.send(question)
@@ -63,24 +63,24 @@ function ask<C extends CalcCall>(process: ChildProcess, question: CalcQuestion &
 
 interface Answered<C extends CalcCall> { answer: CalcCalls[C], engineHash: string }
 
-async function askNow<C extends CalcCall>(call: C, document: SheetDocument, settings: EngineSettings): Promise<Answered<C>> {
+async function askNow<C extends CalcCall>(call: C, document: SheetDocument, settings: EngineSettings, limit: number): Promise<Answered<C>> {
   const { path, hash } = await engineBundle()
   clearTimeout(idle)
-  const answer = await ask(openChild(path), { id: ++lastId, call, document, settings })
+  const answer = await ask(openChild(path), { id: ++lastId, call, document, settings }, limit)
   idle = setTimeout(endChild, IDLE_MS)
   idle.unref()
   return { answer, engineHash: hash }
 }
 
-function inTurn<C extends CalcCall>(call: C, document: SheetDocument, settings: EngineSettings): Promise<Answered<C>> {
-  const next = queue.catch(() => undefined).then(() => askNow(call, document, settings))
+function inTurn<C extends CalcCall>(call: C, document: SheetDocument, settings: EngineSettings, limit = LIMIT_MS): Promise<Answered<C>> {
+  const next = queue.catch(() => undefined).then(() => askNow(call, document, settings, limit))
   queue = next
   return next
 }
 
-/** Throws `ComputationOverrun` when the sheet asks for too much. */
-export async function computeSheet(document: SheetDocument, settings: EngineSettings): Promise<RecordedComputation> {
-  const { answer, engineHash } = await inTurn('sheet', document, settings)
+/** Throws `ComputationOverrun` when the sheet asks for too much; `limit` is in milliseconds. */
+export async function computeSheet(document: SheetDocument, settings: EngineSettings, limit?: number): Promise<RecordedComputation> {
+  const { answer, engineHash } = await inTurn('sheet', document, settings, limit)
   return { ...answer, engineHash }
 }
 
