@@ -59,7 +59,7 @@ describe('from the first sign-in to the verified PDF', () => {
     await page.getByRole('button', { name: /New client/ }).first().click()
     await page.getByLabel('Name').fill(client)
     await page.getByRole('button', { name: 'Add the client' }).click()
-    await page.getByRole('cell', { name: client }).waitFor()
+    await page.getByRole('cell', { name: client, exact: true }).waitFor()
 
     await visit(page, '/people')
     await page.getByRole('button', { name: /Invite/ }).first().click()
@@ -119,7 +119,6 @@ describe('from the first sign-in to the verified PDF', () => {
     ])
     await expectOutput(page, 'f_c = cornerFrequency', /1\.592 kHz.*1\.501.*1\.692/)
     await insertBlock(page, 'Response')
-    await page.getByRole('button', { name: 'Done' }).click()
     await page.locator('svg').filter({ hasText: /corner/ }).first().waitFor()
     await insertBlock(page, 'Requirements')
     await typeLines(page, [{ source: 'attenuation(H, 15.9 kHz) >= 19 dB # pump drive', reference: 'Client specification, clause 4' }])
@@ -154,7 +153,8 @@ describe('from the first sign-in to the verified PDF', () => {
     await dialog.getByLabel('Your password, again').fill(PASSWORD)
     await shot(page, '03-submit')
     await dialog.getByRole('button', { name: 'Sign and submit' }).click()
-    await page.getByText('For checking').first().waitFor()
+    await dialog.waitFor({ state: 'hidden' })
+    await page.getByText('For checking', { exact: true }).first().waitFor()
   })
 
   it('lets the checker annotate, the engineer answer, and the sheet come back', async () => {
@@ -194,7 +194,8 @@ describe('from the first sign-in to the verified PDF', () => {
     await submit.getByText('Nothing stands in the way.').waitFor()
     await submit.getByLabel('Your password, again').fill(PASSWORD)
     await submit.getByRole('button', { name: 'Sign and submit' }).click()
-    await engineer.getByText('For checking').first().waitFor()
+    await submit.waitFor({ state: 'hidden' })
+    await engineer.getByText('For checking', { exact: true }).first().waitFor()
   })
 
   it('lets the checker tick every line by the keyboard and sign', async () => {
@@ -218,7 +219,8 @@ describe('from the first sign-in to the verified PDF', () => {
     await dialog.getByText(/password/i).nth(1).waitFor()
     await dialog.getByLabel('Your password, again').fill(PASSWORD)
     await dialog.getByRole('button', { name: 'Sign as checked' }).click()
-    await page.getByText('Checked').first().waitFor()
+    await dialog.waitFor({ state: 'hidden' })
+    await page.getByText('Checked', { exact: true }).first().waitFor()
   })
 
   it('lets the manager approve and issue, and tells the client', async () => {
