@@ -15,14 +15,13 @@ const alias = {
 /** A project of plain Node tests: `tests/<name>`. */
 const plain = (name: string, test: Record<string, unknown> = {}) => ({
   resolve: { alias },
-  test: { name, root, include: [`tests/${name}/**/*.test.ts`], environment: 'node', ...test },
+  test: { name, root, include: [`tests/${name}/**/*.test.ts`], environment: 'node', testTimeout: 30_000, ...test },
 })
 
 /** Tests that talk to a built server on a database of their own; see tests/helpers/setup.ts. */
 const served = (name: string, test: Record<string, unknown> = {}) => plain(name, {
   globalSetup: ['tests/helpers/setup.ts'],
   setupFiles: ['tests/helpers/environment.ts'],
-  testTimeout: 30_000,
   hookTimeout: 60_000,
   ...test,
 })
