@@ -39,6 +39,7 @@ const documentOf = (editor: Editor) => editor.getJSON() as unknown as SheetDocum
 function makeEditor(options: PadEditorOptions, events: Partial<EditorOptions>): Editor {
   return new Editor({
     ...events,
+    injectCSS: false,
     editable: options.editable(),
     extensions: sheetExtensions({ ...options, responseView: BlockResponse, figureView: BlockFigure }),
     editorProps: {
