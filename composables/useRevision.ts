@@ -33,7 +33,7 @@ export function useRevision(revisionId: string) {
   async function act<T = unknown>(action: string, body: Record<string, unknown> = {}): Promise<T> {
     const version = action === 'revise' ? {} : { version: data.value?.version }
     try {
-      return await $fetch<T>(`${path}/${action}`, { method: 'POST', body: { ...version, ...body } })
+      return await $fetch<unknown>(`${path}/${action}`, { method: 'POST', body: { ...version, ...body } }) as T
     }
     finally { await refresh() }
   }

@@ -23,8 +23,9 @@ function blockLabel(block: SheetBlock): string {
 
 /** By id of row, in reading order. */
 export function rowLabels(document: SheetDocument): Map<string, string> {
-  const rows = document.content.flatMap<[string, string]>(block => isLinesBlock(block)
+  const rowsOf = (block: SheetBlock): [string, string][] => isLinesBlock(block)
     ? (block.content ?? []).map(line => [line.attrs.id, lineSource(line)])
-    : [[block.attrs.id, blockLabel(block)]])
+    : [[block.attrs.id, blockLabel(block)]]
+  const rows = document.content.flatMap(rowsOf)
   return new Map(rows.map(([id, label]) => [id, shortened(label) || 'empty line']))
 }

@@ -6,8 +6,8 @@ export function pdfName(number: string, revision: string): string {
 
 /** A download for this person alone. */
 export const pdfHeaders = (number: string, revision: string, size: number) => ({
-  'content-type': 'application/pdf',
-  'content-length': String(size),
+  'content-type': 'application/pdf' as const,
+  'content-length': size,
   'content-disposition': `attachment; filename="${pdfName(number, revision)}"`,
   'cache-control': 'private, no-store',
   'x-content-type-options': 'nosniff',

@@ -2,7 +2,7 @@
 import { randomUUID } from 'node:crypto'
 import { mkdir, open, rename, rm } from 'node:fs/promises'
 import { dirname, resolve } from 'node:path'
-import { defineDriver } from 'unstorage'
+import type { Driver } from 'unstorage'
 import folder from 'unstorage/drivers/fs'
 
 async function syncFolder(path: string): Promise<void> {
@@ -26,8 +26,8 @@ async function writeDurably(path: string, bytes: Uint8Array): Promise<void> {
   await syncFolder(dirname(path))
 }
 
-export const durableFolder = defineDriver((options: { base: string }) => ({
+export const durableFolder = (options: { base: string }): Driver => ({
   ...folder(options),
   name: 'durable-folder',
   setItemRaw: (key: string, bytes: Uint8Array) => writeDurably(resolve(options.base, key.replaceAll(':', '/')), bytes),
-}))
+})
