@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import * as Y from 'yjs'
 import { hashOf } from '../../../../shared/document/canonical'
+import { idsInOrder } from '../../../../shared/document/identity'
 import { DocumentOutOfBounds, measureTree, readDocument, type RawNode } from '../../../../shared/document/tree'
 import { validateDocument } from '../../../../shared/document/validate'
 import { createInitialUpdate, FRAGMENT } from '../../../../shared/document/yjs'
@@ -65,7 +66,8 @@ describe('a sheet', () => {
     const document = sound(raw)
     const ids = document.content.map(block => block.attrs.id)
     expect(ids[0]).toBe('p')
-    expect(new Set([...ids, ...(document.content[3]!.content as { attrs: { id: string } }[]).map(one => one.attrs.id)]).size).toBe(5)
+    expect(new Set(idsInOrder(document)).size).toBe(5)
+    expect(idsInOrder(document)).toHaveLength(5)
     expect(sound(raw)).toEqual(document)
   })
 
