@@ -1,4 +1,4 @@
-import type { SessionView } from '#shared/types/api'
+import type { Role, SessionView } from '#shared/types/api'
 import type { DeviceView, OrganisationView, PersonView } from '#shared/types/people'
 import { homeOf } from '#shared/people'
 import type { Organisation, Session, User } from '../database'
@@ -7,10 +7,14 @@ const rolesOf = (user: User) => [...user.roleRows ?? []].sort((a, b) => a.positi
 
 const organisationRef = (organisation: Organisation | null | undefined) => organisation ? { id: organisation.id, name: organisation.name } : null
 
-export function presentSession(user: User): SessionView {
+const isStaff = (user: User, roles: readonly Role[]): boolean => user.organisationId === null && roles.some(role => role !== 'client')
+
+/** `outboxInUse`: no mail server is set up, so that letters stay here. */
+export function presentSession(user: User, outboxInUse: boolean): SessionView {
   const roles = rolesOf(user)
   return {
     user: { id: user.id, name: user.name, initials: user.initials, email: user.email, roles, organisation: organisationRef(user.organisation) },
+    outbox: outboxInUse && isStaff(user, roles),
     home: homeOf(roles),
   }
 }

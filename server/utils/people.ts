@@ -3,6 +3,7 @@ import { QueryTypes } from 'sequelize'
 import type { SessionView } from '#shared/types/api'
 import type { OrganisationView, PersonView } from '#shared/types/people'
 import { Organisation, sequelize, User, UserRole } from '../database'
+import { usesOutbox } from '../mail'
 import { presentOrganisation, presentPerson, presentSession } from '../presenters/people'
 import { notFound } from './errors'
 
@@ -16,7 +17,7 @@ async function requirePerson(id: string): Promise<User> {
 }
 
 /** What the pages know about who is signed in. */
-export const sessionView = async (userId: string): Promise<SessionView> => presentSession(await requirePerson(userId))
+export const sessionView = async (userId: string): Promise<SessionView> => presentSession(await requirePerson(userId), usesOutbox())
 
 export const personView = async (userId: string): Promise<PersonView> => presentPerson(await requirePerson(userId))
 

@@ -14,6 +14,8 @@ export interface PersonRef { id: string, name: string, initials: string }
 
 export interface SessionView {
   user: PersonRef & { email: string, roles: Role[], organisation: { id: string, name: string } | null }
+  /** Whether letters stay in the demonstration's outbox and this person may read it there. */
+  outbox: boolean
   /** Where this person's work list is: `/work`, `/queue`, `/board` or `/issued`. */
   home: string
 }
