@@ -1,5 +1,5 @@
 import type { Awareness } from 'y-protocols/awareness'
-import type { Ref } from 'vue'
+import { shallowReadonly, shallowRef, type Ref } from 'vue'
 import { presenceSchema, type PresentPerson } from '~~/shared/collab/presence'
 
 /** Everybody else in the sheet, once each, whatever the number of their open pages. */

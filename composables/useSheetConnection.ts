@@ -1,6 +1,6 @@
 import type { Awareness } from 'y-protocols/awareness'
 import type { WebsocketProvider } from 'y-websocket'
-import type { Ref } from 'vue'
+import { shallowReadonly, shallowRef, type Ref } from 'vue'
 import type * as Y from 'yjs'
 import { NOT_SAVED_AFTER } from '~~/shared/limits'
 import type { Changed } from '~~/shared/collab/messages'

@@ -1,5 +1,5 @@
 import * as Y from 'yjs'
-import type { Ref } from 'vue'
+import { shallowReadonly, shallowRef, type Ref } from 'vue'
 import { unsentEdits, unsentUpdate, type UnsentEdits } from '~~/shared/collab/unsent'
 import { keepCopy, keptEpochs, removeCopy } from './collab/keptCopy'
 

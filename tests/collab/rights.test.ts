@@ -87,7 +87,7 @@ describe('who may only read', () => {
   it('is refused a deletion too, though it brings nothing new', async () => {
     const draft = await createDraft(1)
     const { raw, doc } = await openReady(await createPerson({ roles: ['manager'] }), draft)
-    let deletion = EMPTY_UPDATE
+    let deletion: Uint8Array = EMPTY_UPDATE
     doc.on('update', bytes => deletion = bytes)
     doc.getXmlFragment('sheet').delete(0, 1)
     raw.send(update(deletion))

@@ -1,6 +1,6 @@
 /** Writers whose every edit carries a word of its own, so that what became of each can be told afterwards. */
 import { expect } from 'vitest'
-import * as Y from 'yjs'
+import type * as Y from 'yjs'
 import { allCommitted } from '../../../shared/collab/saving'
 import type { Page } from './sheet'
 
