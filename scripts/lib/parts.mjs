@@ -1,6 +1,6 @@
 /** The parts of the tests: what each runs, what it needs, and how its result is counted. */
 import { spawn } from 'node:child_process'
-import { existsSync, rmSync } from 'node:fs'
+import { rmSync } from 'node:fs'
 import { join } from 'node:path'
 import { readJson, ROOT, TEST_DATA } from './paths.mjs'
 import { endProcess } from './process.mjs'
@@ -49,8 +49,6 @@ const vitest = project => async (context) => {
   return { passed: numPassedTests, failed: code !== 0 ? Math.max(numFailedTests, 1) : numFailedTests }
 }
 
-const sheets = () => ['tests/engine/sheets', 'tests/sheets'].map(folder => join(ROOT, folder)).filter(folder => existsSync(folder))
-
 /** In the order in which they are told. `served` needs a built server and a database. */
 export const PARTS = {
   lint: { run: single([bin('eslint/bin/eslint.js'), '.', '--max-warnings', '0']) },
@@ -58,7 +56,7 @@ export const PARTS = {
   unit: { run: vitest('unit') },
   engine: { run: vitest('engine') },
   nuxt: { run: vitest('nuxt') },
-  sheets: { run: context => counted([TSX, 'scripts/check-sheets.ts', ...sheets()])(context) },
+  sheets: { run: counted([TSX, 'scripts/check-sheets.ts', join(ROOT, 'tests/sheets')]) },
   api: { served: true, run: vitest('api') },
   collab: { served: true, run: vitest('collab') },
   pdf: { served: true, run: vitest('pdf') },
