@@ -5,7 +5,7 @@ import { createDraft, storedDocument } from './support/drafts'
 import { closePages, openPage, type Page } from './support/sheet'
 import { expectAllSaved, randomFrom, Writer } from './support/tokens'
 
-/** `npm run soak:collab` sets more. */
+/** A long run: `POLEWRIGHT_KILLS=200 npx vitest run --project collab tests/collab/kill.test.ts`. */
 const KILLS = Number(process.env.POLEWRIGHT_KILLS ?? 5)
 const SEED = Number(process.env.POLEWRIGHT_SEED ?? 20260401)
 
