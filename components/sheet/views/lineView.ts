@@ -9,6 +9,7 @@ import { element, island, mark, typesetInto } from './dom'
 import { underline } from './highlight'
 import { linkRow, showPeople } from './margin'
 import { outputParts } from './output'
+import { keepReachable, releaseReachable } from './reachable'
 import { createStatusControl } from './statusControl'
 import { text } from '../extensions/attributes'
 import type { RowState, SheetEditorHub } from '~/composables/useSheetEditorHub'
@@ -94,6 +95,7 @@ class LineView implements NodeView {
   destroy(): void {
     this.clearUnderline()
     this.unobserve()
+    releaseReachable(this.parts.formula)
     this.link.destroy()
   }
 
@@ -168,6 +170,7 @@ class LineView implements NodeView {
       typesetInto(span, latex)
       return span
     }))
+    keepReachable(this.parts.formula)
   }
 }
 
