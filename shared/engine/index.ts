@@ -8,6 +8,7 @@ import { resolve } from './check/resolve'
 import { Fault } from './fault'
 import { usageOf } from './functions'
 import { Sheet } from './graph/sheet'
+import type { Edited } from './graph/sheet'
 import { responseFigures, stepFigures } from './graph/sweep'
 import { unitWords } from './quantity/unitTable'
 import { parseLine } from './syntax/parse'
@@ -17,6 +18,7 @@ import { nameLatex } from './typeset/names'
 import type { EngineSettings, LineResult, Problem, ResponseFigures, ResponseRequest, SheetInput, SheetResult, StepFigures, StepRequest } from './types'
 
 export type * from './types'
+export type { Edited } from './graph/sheet'
 export type { Json } from './graph/recorded'
 export { sheetCautions } from './cautions'
 export type { CautionBlock, SheetCaution } from './cautions'
@@ -42,6 +44,13 @@ export interface Completion {
 export interface SheetEngine {
   /** Evaluates the whole sheet; lines that have not changed, nor what they depend on, are kept from the last call. */
   evaluate(input: SheetInput): SheetResult
+  /** The same, but results are made only of what changed, and only when they are asked for. */
+  update(input: SheetInput): Edited
+  /**
+   * Puts another text in place of one line's and computes only that line and those that rest on it.
+   * Throws where the last evaluation had no line of that id.
+   */
+  edit(id: string, source: string): Edited
   /** An expression in the scope after the last line of the last evaluation. */
   evaluateExpression(source: string): ExpressionResult
   /** Curves and figures of a transfer function of the last evaluation. */
@@ -63,6 +72,11 @@ export function createSheetEngine(settings: EngineSettings): SheetEngine {
       digits = input.settings.significantDigits
       return sheet.evaluate(input)
     },
+    update: (input) => {
+      digits = input.settings.significantDigits
+      return sheet.update(input)
+    },
+    edit: (id, source) => sheet.edit(id, source),
     evaluateExpression: source => sheet.expression(source).result,
     response: request => responseFigures(sheet, request, digits),
     step: request => stepFigures(sheet, request, digits),

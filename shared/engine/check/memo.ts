@@ -36,6 +36,7 @@ function oncePerArgument(evaluation: Evaluation, compute: (s: Complex) => Comple
 }
 
 export function memoised<K extends Kind>(term: Term<K>, evaluation: Evaluation): Term<K> {
+  if (!evaluation.remembers) return term
   const constant = term.variables.length === 0
   const { dual, rational, atS } = term
   return {

@@ -18,6 +18,9 @@ export interface Variable {
 }
 
 export class Evaluation {
+  /** `remembers` is false where the values behind names change between two runs of the same closures. */
+  constructor(readonly remembers = true) {}
+
   /** 0 at the nominal values; every other point of a box has a number of its own. */
   point = 0
   /** Number of the box over which intervals are computed; another number for every other set of variables. */

@@ -29,7 +29,7 @@ export function finishLine(request: LineRequest, parsed: ParsedLine, compiled: C
   return {
     result: {
       status, ...part.fields, problems, uses,
-      typeset: typesetOf(request, parsed, compiled, part.result),
+      typeset: typesetOf(request, parsed, compiled.tree, part.result, compiled.type === 'value' ? compiled.tolerance : undefined),
       ...(parsed.define ? { defines: parsed.define.name } : {}),
       ...(parsed.note === undefined ? {} : { note: parsed.note }),
     },
@@ -76,10 +76,11 @@ function usesOf(compiled: CompiledLine, scope: Scope): string[] {
   return names
 }
 
-function typesetOf(request: LineRequest, parsed: ParsedLine, compiled: CompiledLine, result: string | undefined): LineResult['typeset'] {
+/** The line as a formula, the formula with its numbers, and the result. */
+export function typesetOf(request: Pick<LineRequest, 'scope' | 'digits'>, parsed: ParsedLine, tree: Resolved, result: string | undefined, tolerance?: Resolved): LineResult['typeset'] {
   const left = leftSide(parsed)
-  const right = rightSide(compiled, () => undefined)
-  const numbers = rightSide(compiled, name => substituted(name, request, parsed))
+  const right = rightSide(tree, tolerance, () => undefined)
+  const numbers = rightSide(tree, tolerance, name => substituted(name, request, parsed))
   return {
     formula: left === '' ? right : `${left} = ${right}`,
     ...(numbers === right ? {} : { substituted: numbers }),
@@ -95,13 +96,12 @@ function leftSide({ define }: ParsedLine): string {
 
 type Substitute = Parameters<typeof typesetTree>[1]
 
-function rightSide(compiled: CompiledLine, substitute: NonNullable<Substitute>): string {
-  const latex = typesetTree(compiled.tree, substitute)
-  if (compiled.type !== 'value' || !compiled.tolerance) return latex
-  return `${latex} \\pm ${typesetTree(compiled.tolerance, substitute)}`
+function rightSide(tree: Resolved, tolerance: Resolved | undefined, substitute: NonNullable<Substitute>): string {
+  const latex = typesetTree(tree, substitute)
+  return tolerance ? `${latex} \\pm ${typesetTree(tolerance, substitute)}` : latex
 }
 
-function substituted(name: string, { scope, digits }: LineRequest, parsed: ParsedLine): ReturnType<NonNullable<Substitute>> {
+function substituted(name: string, { scope, digits }: Pick<LineRequest, 'scope' | 'digits'>, parsed: ParsedLine): ReturnType<NonNullable<Substitute>> {
   if (parsed.define?.parameters?.some(parameter => parameter.name === name)) return undefined
   const entity = scope.lookup(name)
   return entity?.type === 'value' ? valueInFormula(entity.term, digits) : undefined

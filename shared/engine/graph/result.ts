@@ -36,7 +36,8 @@ function boundsOf(term: Term, kind: ScalarKind, evaluation: Evaluation): WorstCa
   return worstCase(term, evaluation)
 }
 
-function scalarResult(value: Value, kind: ScalarKind, digits: number, bounds: WorstCase | undefined): ResultValue {
+/** A single value with its limits, if any. */
+export function scalarResult(value: Value, kind: ScalarKind, digits: number, bounds: WorstCase | undefined): ResultValue {
   if (kind.type === 'number' && kind.complex) {
     const { re, im } = asComplex(value)
     return { type: 'complex', re, im, dimension: kind.dimension, shown: showComplex(re, im, kind, digits), ...(kind.mark && { mark: kind.mark }) }

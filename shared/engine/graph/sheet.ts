@@ -4,103 +4,150 @@ import { Fault, fault } from '../fault'
 import { LIMITS } from '../limits'
 import { isCircuitValue } from '../quantity/dimension'
 import type { ParsedLine } from '../syntax/node'
-import { definedName, parseLine } from '../syntax/parse'
+import { definedName } from '../syntax/parse'
 import type { LineInput, LineResult, SheetInput, SheetResult } from '../types'
 import { Evaluation } from './evaluation'
+import { Influence } from './influence'
+import { Readings } from './readings'
 import { computeLine } from './record'
 import type { Computed } from './record'
+import { entityOf, isQuick, quickResult, ran } from './row'
+import type { QuickRow, Row } from './row'
+import { fitsSlot } from './shape'
+import { ShapeBook } from './shapeBook'
+import type { FoundShape } from './shapeBook'
 
-interface Defined { entity: Entity, version: number, line: number }
-
-interface Kept {
-  source: string
-  digits: number
-  /** What each word of the line meant, and whether its own name was free. */
-  context: string
-  computed: Computed
-  /** The same object from one evaluation to the next while nothing changes. */
-  result: LineResult
-  version: number
+/** What one edit did: the lines that were computed anew, in reading order. */
+export interface Edited {
+  readonly count: number
+  readonly results: () => LineResult[]
 }
+
+/** One for all sheets: what it holds depends on nothing but the text and the kinds of values. */
+const SHAPES = new ShapeBook()
 
 export class Sheet {
   readonly evaluation = new Evaluation()
-  private readonly kept = new Map<string, Kept>()
-  private parsed = new Map<string, ParsedLine | Fault>()
-  private names = new Map<string, Defined>()
+  private readonly readings = new Readings()
+  private readonly shapes = SHAPES
+  private kept = new Map<string, Row>()
+  private rows: Row[] = []
+  private names = new Map<string, Row>()
   private definitions = new Map<string, number>()
-  private inputs: readonly LineInput[] = []
+  private influence: Influence | undefined
+  private inputs: LineInput[] = []
   private digits = 4
   private versions = 0
   /** Lines that the last evaluation computed anew. */
   recomputed = 0
 
   evaluate(input: SheetInput): SheetResult {
-    this.digits = clampDigits(input.settings.significantDigits)
-    this.inputs = input.lines
-    this.recomputed = 0
-    const parsed = this.parseAll(input.lines)
-    this.names = new Map()
-    this.definitions = firstDefinitions(input.lines, parsed)
-    const lines = input.lines.map((line, index) => this.line(line, index, parsed[index] ?? new Fault({ code: 'syntax', severity: 'error', message: '' })))
-    this.forget(new Set(input.lines.map(line => line.id)))
-    return { lines }
+    this.update(input)
+    return { lines: this.rows.map(row => this.resultOf(row)) }
+  }
+
+  /** Evaluates without making results that nobody looks at. */
+  update(input: SheetInput): Edited {
+    const before = this.versions
+    this.compute(input.lines, clampDigits(input.settings.significantDigits))
+    return this.since(before)
+  }
+
+  /**
+   * Puts another text in place of one line's and computes that line and those that rest on it.
+   * Throws where the last evaluation had no such line.
+   */
+  edit(id: string, source: string): Edited {
+    const row = this.kept.get(id)
+    const index = row ? this.rows.indexOf(row) : -1
+    if (!row || index < 0) throw new Error('the sheet has no such line')
+    this.inputs[index] = { id, source }
+    const moved = this.move(row, index, source)
+    if (moved) return moved
+    const before = this.versions
+    this.compute(this.inputs, this.digits)
+    return this.since(before)
+  }
+
+  private since(version: number): Edited {
+    const results = () => this.rows.filter(row => row.version > version).map(row => this.resultOf(row))
+    return { count: this.recomputed, results }
   }
 
   /** A further line, in the scope after the last one. It defines nothing. */
   expression(source: string): Computed {
-    const parsed = parseOrFault(source)
+    const parsed = this.readings.parsed(source)
     const define = parsed instanceof Fault ? undefined : parsed.define
     if (define) return computedFault(fault('definition-place', 'An expression defines no name here.', 'Leave out the part before `=`.', define.at))
-    return this.compute(parsed, source, this.inputs.length)
+    return this.inFull(parsed, source, this.inputs.length)
   }
 
   /** What a name means after the last line. */
   lookup(name: string): Entity | undefined {
-    return this.names.get(name)?.entity
+    return entityOf(this.names.get(name))
   }
 
   definedNames(): string[] {
     return [...this.names.keys()]
   }
 
-  private parseAll(lines: readonly LineInput[]): (ParsedLine | Fault)[] {
-    const before = this.parsed
-    this.parsed = new Map()
-    return lines.map(({ source }) => {
-      const parsed = this.parsed.get(source) ?? before.get(source) ?? parseOrFault(source)
-      this.parsed.set(source, parsed)
-      return parsed
-    })
+  private compute(lines: readonly LineInput[], digits: number): void {
+    this.digits = digits
+    this.inputs = [...lines]
+    this.recomputed = 0
+    this.influence = undefined
+    this.readings.begin()
+    this.names = new Map()
+    this.definitions = this.firstDefinitions(lines)
+    const before = this.kept
+    this.kept = new Map()
+    this.rows = lines.map((line, index) => this.row(line, index, before.get(line.id)))
   }
 
-  private line(input: LineInput, index: number, parsed: ParsedLine | Fault): LineResult {
-    const { id, source } = input
-    const context = this.contextOf(parsed, source, index)
-    const before = this.kept.get(id)
-    const reusable = before && before.source === source && before.digits === this.digits && before.context === context
-    const kept = reusable ? before : this.anew(id, source, context, parsed, index)
-    const name = this.nameAt(parsed, source)
-    const { entity } = kept.computed
-    if (entity && name !== undefined) {
-      // A kept line may have moved since it failed.
-      const current: Entity = entity.type === 'failed' ? { type: 'failed', line: index + 1 } : entity
-      this.names.set(name, { entity: current, version: kept.version, line: index + 1 })
+  private row(input: LineInput, index: number, before: Row | undefined): Row {
+    const row = this.quickRow(input, index, before) ?? this.fullRow(input, index, before)
+    row.line = index + 1
+    this.kept.set(input.id, row)
+    // A kept line may have moved since it failed.
+    if (row.entity?.type === 'failed') row.entity = { type: 'failed', line: index + 1 }
+    if (row.name !== undefined && (row.shape || row.entity)) this.names.set(row.name, row)
+    return row
+  }
+
+  private quickRow({ id, source }: LineInput, index: number, before: Row | undefined): Row | undefined {
+    const outline = this.readings.outline(source)
+    if (!outline || index >= LIMITS.lines || this.definitions.get(outline.name) !== index) return undefined
+    const found = this.shapes.find(source, outline, word => this.names.get(word))
+    if (!found) return undefined
+    if (before?.source === source && before.digits === this.digits && isCurrent(before, found)) return before
+    const { shape, suppliers, names } = found
+    const row: QuickRow = {
+      id, source, name: outline.name, line: index + 1, version: this.versions + 1, digits: this.digits, result: undefined, entity: undefined,
+      kind: shape.kind, value: NaN, context: '', shape, suppliers, names, literal: outline.literal,
     }
-    return kept.result
-  }
-
-  private anew(id: string, source: string, context: string, parsed: ParsedLine | Fault, index: number): Kept {
+    if (!ran(row)) return undefined
     this.versions += 1
     this.recomputed += 1
-    const computed = index < LIMITS.lines ? this.compute(parsed, source, index) : computedFault(fault('sheet-too-long', `A sheet holds at most ${LIMITS.lines} lines.`, 'Split it into several sheets.'))
-    const kept = { source, digits: this.digits, context, computed, result: { id, ...computed.result }, version: this.versions }
-    this.kept.set(id, kept)
-    return kept
+    return row
   }
 
-  private compute(parsed: ParsedLine | Fault, source: string, index: number): Computed {
-    const name = this.nameAt(parsed, source)
+  private fullRow({ id, source }: LineInput, index: number, before: Row | undefined): Row {
+    const parsed = this.readings.parsed(source)
+    const context = this.contextOf(parsed, source, index)
+    if (before && !before.shape && before.source === source && before.digits === this.digits && before.context === context) return before
+    this.recomputed += 1
+    this.versions += 1
+    const computed = index < LIMITS.lines ? this.inFull(parsed, source, index) : computedFault(fault('sheet-too-long', `A sheet holds at most ${LIMITS.lines} lines.`, 'Split it into several sheets.'))
+    const { entity } = computed
+    const single = entity?.type === 'value' && fitsSlot(entity.term) ? entity.term : undefined
+    return {
+      id, source, name: nameIn(parsed, source), line: index + 1, version: this.versions, digits: this.digits, result: { id, ...computed.result }, entity,
+      kind: single?.kind, value: single ? single.run() as number : NaN, context, shape: undefined, suppliers: [], names: [], literal: undefined,
+    }
+  }
+
+  private inFull(parsed: ParsedLine | Fault, source: string, index: number): Computed {
+    const name = nameIn(parsed, source)
     const first = name === undefined ? undefined : this.definitions.get(name)
     return computeLine({
       parsed, source, name,
@@ -113,17 +160,40 @@ export class Sheet {
     })
   }
 
-  private nameAt(parsed: ParsedLine | Fault, source: string): string | undefined {
-    return parsed instanceof Fault ? definedName(source) : parsed.define?.name
+  /** An edit that moves values only: nothing is read or compiled but the line itself. */
+  private move(row: Row, index: number, source: string): Edited | undefined {
+    const outline = this.readings.outline(source)
+    if (!isQuick(row) || !outline || outline.name !== row.name) return undefined
+    const found = this.shapes.find(source, outline, word => this.above(word, index))
+    if (!found || found.shape.kind !== row.kind || found.suppliers.some((one, i) => one !== row.suppliers[i])) return undefined
+    this.influence ??= new Influence(this.rows, name => (this.names.get(name)?.line ?? 0) - 1)
+    const affected = this.influence.of(index)
+    if (!affected) return undefined
+    row.source = source
+    row.shape = found.shape
+    row.names = found.names
+    row.literal = outline.literal
+    for (const one of affected) {
+      if (!ran(one)) return undefined
+      one.version = ++this.versions
+      one.result = undefined
+    }
+    this.recomputed = affected.length
+    return { count: affected.length, results: () => affected.map(one => this.resultOf(one)) }
+  }
+
+  private resultOf(row: Row): LineResult {
+    return row.result ??= isQuick(row) ? quickResult(row) : unread(row.id)
+  }
+
+  private above(word: string, index: number): Row | undefined {
+    const row = this.names.get(word)
+    return row && row.line <= index ? row : undefined
   }
 
   private scopeAt(index: number, own: string | undefined): Scope {
-    const { names } = this
     return {
-      lookup: (name) => {
-        const defined = names.get(name)
-        return defined && defined.line <= index ? defined.entity : undefined
-      },
+      lookup: name => entityOf(this.above(name, index)),
       definedBelow: (name) => {
         const line = this.definitions.get(name)
         return line !== undefined && line > index ? line + 1 : undefined
@@ -135,12 +205,12 @@ export class Sheet {
   /** All that the meaning of a line hangs on besides its own text. */
   private contextOf(parsed: ParsedLine | Fault, source: string, index: number): string {
     if (parsed instanceof Fault) {
-      const name = this.nameAt(parsed, source)
+      const name = nameIn(parsed, source)
       return `unreadable ${index} ${name === undefined ? '' : this.definitions.get(name)}`
     }
     const words = [...new Set(parsed.words)].map((word) => {
-      const defined = this.names.get(word)
-      if (defined) return `${word}@${defined.version}${defined.entity.type === 'failed' ? `:${defined.line}` : ''}`
+      const row = this.above(word, index)
+      if (row) return `${word}@${row.version}${row.entity?.type === 'failed' ? `:${row.entity.line}` : ''}`
       const line = this.definitions.get(word)
       return line === undefined || line === index ? word : `${word}<${line}`
     })
@@ -156,20 +226,39 @@ export class Sheet {
     const visit = (name: string) => {
       if (seen.has(name)) return
       seen.add(name)
-      const defined = this.names.get(name)
-      const id = defined && this.inputs[defined.line - 1]?.id
-      const result = id === undefined ? undefined : this.kept.get(id)?.computed.result
-      if (!defined || !result) return
-      if (result.uses.length > 0) result.uses.forEach(visit)
-      else if (isOpenPart(defined.entity)) found.push(name)
+      const row = this.names.get(name)
+      const entity = entityOf(row)
+      if (!row || !entity) return
+      const { uses } = this.resultOf(row)
+      if (uses.length > 0) uses.forEach(visit)
+      else if (isOpenPart(entity)) found.push(name)
     }
     names.forEach(visit)
     return found
   }
 
-  private forget(ids: ReadonlySet<string>): void {
-    for (const id of this.kept.keys()) if (!ids.has(id)) this.kept.delete(id)
+  /** Index of the first line that defines each name. */
+  private firstDefinitions(lines: readonly LineInput[]): Map<string, number> {
+    const definitions = new Map<string, number>()
+    lines.forEach(({ source }, index) => {
+      const name = this.readings.outline(source)?.name ?? nameIn(this.readings.parsed(source), source)
+      if (name !== undefined && !definitions.has(name)) definitions.set(name, index)
+    })
+    return definitions
   }
+}
+
+/** Versions rise: a line computed after all that goes into it is still right. */
+function isCurrent(row: Row, { shape, suppliers }: FoundShape): boolean {
+  return row.shape === shape && suppliers.every((one, i) => one === row.suppliers[i] && one.version < row.version)
+}
+
+function unread(id: string): LineResult {
+  return { id, ...computedFault(new Fault({ code: 'syntax', severity: 'error', message: '' })).result }
+}
+
+function nameIn(parsed: ParsedLine | Fault, source: string): string | undefined {
+  return parsed instanceof Fault ? definedName(source) : parsed.define?.name
 }
 
 function isOpenPart(entity: Entity): boolean {
@@ -182,26 +271,4 @@ function clampDigits(digits: number): number {
 
 function computedFault(error: Fault): Computed {
   return { result: { status: 'error', kind: 'error', problems: [error.problem], uses: [], typeset: {} } }
-}
-
-function parseOrFault(source: string): ParsedLine | Fault {
-  try {
-    return parseLine(source)
-  }
-  catch (error) {
-    if (error instanceof Fault) return error
-    if (error instanceof RangeError) return fault('too-deep', 'This line is nested too deeply to be computed.', 'Give parts of it lines and names of their own.')
-    throw error
-  }
-}
-
-/** Index of the first line that defines each name. */
-function firstDefinitions(lines: readonly LineInput[], parsed: readonly (ParsedLine | Fault)[]): Map<string, number> {
-  const definitions = new Map<string, number>()
-  lines.forEach(({ source }, index) => {
-    const line = parsed[index]
-    const name = line instanceof Fault || !line ? definedName(source) : line.define?.name
-    if (name !== undefined && !definitions.has(name)) definitions.set(name, index)
-  })
-  return definitions
 }
