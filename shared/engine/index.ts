@@ -28,7 +28,7 @@ export type { Stated, UnitScale } from './graph/units'
 export { LIMITS } from './limits'
 
 /** Changes whenever a recorded result could come out differently. */
-export const ENGINE_VERSION = '1.0.0'
+export const ENGINE_VERSION = '1.1.0'
 
 /** The result of a further expression; it is no line and has no id. */
 export type ExpressionResult = Omit<LineResult, 'id'>

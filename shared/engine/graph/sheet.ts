@@ -41,6 +41,9 @@ export class Sheet {
   /** Lines that the last evaluation computed anew. */
   recomputed = 0
 
+  /** @param shares whether lines of one shape are compiled once; without, every line is compiled by itself, with the same results */
+  constructor(private readonly shares = true) {}
+
   evaluate(input: SheetInput): SheetResult {
     this.update(input)
     return { lines: this.rows.map(row => this.resultOf(row)) }
@@ -115,7 +118,7 @@ export class Sheet {
   }
 
   private quickRow({ id, source }: LineInput, index: number, before: Row | undefined): Row | undefined {
-    const outline = this.readings.outline(source)
+    const outline = this.shares ? this.readings.outline(source) : null
     if (!outline || index >= LIMITS.lines || this.definitions.get(outline.name) !== index) return undefined
     const found = this.shapes.find(source, outline, word => this.names.get(word))
     if (!found) return undefined

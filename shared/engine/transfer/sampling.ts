@@ -27,14 +27,48 @@ export function sampleResponse(r: Rational, omega: Float64Array, gain: Float64Ar
   const above: Product = { re: 1, im: 0, log: 0 }
   const below: Product = { re: 1, im: 0, log: 0 }
   const constant = ln(Math.abs(r.gain))
+  const turns = ((r.origin % 4) + 4) % 4 * TWO_PI / 4 + (r.gain < 0 ? TWO_PI / 2 : 0)
+  let [before, angle, calm] = [0, 0, 0]
   for (let i = 0; i < omega.length; i++) {
     const w = omega[i]!
     multiplyFactors(above, r.numerator, w)
     multiplyFactors(below, r.denominator, w)
     const origin = r.origin === 0 ? 0 : r.origin * ln(w)
     gain[i] = (constant + origin + logRatio(above, below)) * DB_PER_NEPER
-    if (phase) phase[i] = degrees(unwrapped(r, a, above, below, w))
+    if (!phase) continue
+    // Between points this close the phase cannot have gone far, so the branch of the last one is right.
+    const close = i > 0 && w > before && w < before * CLOSE && w < calm
+    if (!close) calm = endOfCalm(a, w)
+    angle = close ? nearest(fineAngle(above, below) + turns, angle) : unwrapped(a, above, below, turns, w)
+    before = w
+    phase[i] = degrees(angle)
   }
+}
+
+/** Ratio of neighbouring frequencies up to which one point's phase tells the branch of the next. */
+const CLOSE = 1.001
+/** Within this ratio of a root the phase may turn fast, and the roots tell its branch. */
+const NEAR = 1.03
+
+/** The frequency up to which no root is near, or 0 where one is: rad/s. */
+function endOfCalm(a: Analysis, w: number): number {
+  let end = Infinity
+  for (const { omega } of a.poles) end = calmUntil(omega, w, end)
+  for (const { omega } of a.zeros) end = calmUntil(omega, w, end)
+  return end
+}
+
+function calmUntil(omega: number, w: number, end: number): number {
+  if (w > omega * NEAR || omega === 0) return end
+  return w < omega / NEAR ? Math.min(end, omega / NEAR) : 0
+}
+
+function nearest(angle: number, to: number): number {
+  return angle + TWO_PI * Math.round((to - angle) / TWO_PI)
+}
+
+function fineAngle(above: Product, below: Product): number {
+  return atan2(above.im * below.re - above.re * below.im, above.re * below.re + above.im * below.im)
 }
 
 function multiplyFactors(product: Product, factors: readonly Factor[], w: number): void {
@@ -79,10 +113,8 @@ function logRatio(a: Product, b: Product): number {
 }
 
 /** The angle of the value on the branch that the roots tell; theirs alone right at a root on the axis. */
-function unwrapped(r: Rational, a: Analysis, above: Product, below: Product, w: number): number {
+function unwrapped(a: Analysis, above: Product, below: Product, turns: number, w: number): number {
   const rough = phaseFromRoots(a, w)
-  const turns = ((r.origin % 4) + 4) % 4 * TWO_PI / 4 + (r.gain < 0 ? TWO_PI / 2 : 0)
-  const fine = atan2(above.im * below.re - above.re * below.im, above.re * below.re + above.im * below.im) + turns
-  const result = fine + TWO_PI * Math.round((rough - fine) / TWO_PI)
+  const result = nearest(fineAngle(above, below) + turns, rough)
   return Math.abs(result - rough) < 0.5 ? result : rough
 }
