@@ -13,12 +13,15 @@ import { responseFigures, stepFigures } from './graph/sweep'
 import { unitWords } from './quantity/unitTable'
 import { parseLine } from './syntax/parse'
 import { CONSTANT_NAMES, FUNCTION_NAMES } from './syntax/words'
+import type { ToleranceProgress, ToleranceRequest, ToleranceResult } from './tolerance/request'
+import { runTolerance } from './tolerance/run'
 import { typesetTree } from './typeset/formula'
 import { nameLatex } from './typeset/names'
 import type { EngineSettings, LineResult, Problem, ResponseFigures, ResponseRequest, SheetInput, SheetResult, StepFigures, StepRequest } from './types'
 
 export type * from './types'
 export type { Edited } from './graph/sheet'
+export type * from './tolerance/request'
 export type { Json } from './graph/recorded'
 export { sheetCautions } from './cautions'
 export type { CautionBlock, SheetCaution } from './cautions'
@@ -56,6 +59,8 @@ export interface SheetEngine {
   /** Curves and figures of a transfer function of the last evaluation. */
   response(request: ResponseRequest): ResponseFigures
   step(request: StepRequest): StepFigures
+  /** A tolerance analysis in the scope of the last evaluation, in slices: it may be left between two of them. */
+  tolerance(request: ToleranceRequest): Generator<ToleranceProgress, ToleranceResult>
   /** An expression as mathematics, without evaluation. */
   typesetExpression(source: string): { latex: string } | Problem
   /** Words that begin with the prefix: names of the sheet first, then functions, constants, units. */
@@ -80,6 +85,7 @@ export function createSheetEngine(settings: EngineSettings): SheetEngine {
     evaluateExpression: source => sheet.expression(source).result,
     response: request => responseFigures(sheet, request, digits),
     step: request => stepFigures(sheet, request, digits),
+    tolerance: request => runTolerance(sheet, request, digits),
     typesetExpression: source => typesetExpression(source, sheet),
     completions: prefix => completionsOf(prefix, sheet.definedNames()),
     recomputed: () => sheet.recomputed,

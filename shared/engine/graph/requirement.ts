@@ -70,7 +70,7 @@ function judgeRelation(relation: Relation, evaluation: Evaluation): Judged {
   return { verdict, worst, nominal, kind, text, relation, ...(item === undefined ? {} : { item }) }
 }
 
-function scalarKind(kind: Kind): ScalarKind {
+export function scalarKind(kind: Kind): ScalarKind {
   if (kind.type === 'number' || kind.type === 'level') return kind
   if (kind.type === 'list') return kind.of
   return number([0, 0, 0, 0, 0, 0, 0])
@@ -83,11 +83,11 @@ function leastOf(term: Term, kind: ScalarKind): Term {
   return { kind, variables, effort, at, run: () => leastValue(run()) }
 }
 
-function leastValue(value: Value): number {
+export function leastValue(value: Value): number {
   return isList(value) ? Math.min(...value.map(asNumber)) : asNumber(value)
 }
 
-function slackOf({ larger }: Relation, item: number | undefined): number {
+export function slackOf({ larger }: Relation, item: number | undefined): number {
   const value = larger.run()
   const side = isList(value) ? asNumber(value[item ?? 0] ?? 0) : asNumber(value)
   return Number.isFinite(side) ? MARGIN_TOLERANCE * Math.abs(side) : 0

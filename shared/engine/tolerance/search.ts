@@ -15,6 +15,8 @@ export interface SearchRequest {
   evaluate: (values: readonly number[]) => number
   /** Cost of one evaluation, in steps. */
   effort: number
+  /** For a long run: samples along the edges of boxes of more variables, and more of the best refined. */
+  thorough?: boolean
 }
 
 interface Budget {
@@ -36,6 +38,8 @@ function budgetFor(effort: number): Budget {
   return { edgePoints: 0, inside: 6, starts: 1, rounds: 2, grid: 3, golden: 12 }
 }
 
+const THOROUGH: Budget = { edgePoints: 7, inside: 200, starts: 8, rounds: 6, grid: 7, golden: 40 }
+
 const CHEAP = 1000
 const COSTLY = 5000
 
@@ -44,6 +48,7 @@ const NEAR = 1e-3
 
 const CORNERS_UP_TO = 10
 const EDGES_UP_TO = 3
+const EDGES_UP_TO_THOROUGH = 6
 
 interface Sample { position: number[], value: number }
 
@@ -58,9 +63,9 @@ function sameBase({ lowBase, highBase }: SearchRequest): boolean {
 }
 
 function searchOne(request: SearchRequest, base: readonly number[], sense: 1 | -1, known?: Sample[]): { best: number, samples: Sample[] } {
-  const budget = budgetFor(request.effort)
+  const budget = request.thorough ? THOROUGH : budgetFor(request.effort)
   const evaluate = (position: readonly number[]) => request.evaluate(placed(request, base, position))
-  const samples = known ?? sampleBox(request.open.length, budget, evaluate)
+  const samples = known ?? sampleBox(request.open.length, budget, evaluate, request.thorough ? EDGES_UP_TO_THOROUGH : EDGES_UP_TO)
   const better = (a: number, b: number) => sense * a > sense * b
   const ranked = [...samples].sort((a, b) => sense * (b.value - a.value))
   let best = ranked[0]?.value ?? NaN
@@ -84,12 +89,12 @@ function placed({ variables, open }: SearchRequest, base: readonly number[], pos
   return values
 }
 
-function sampleBox(n: number, budget: Budget, evaluate: (position: readonly number[]) => number): Sample[] {
+function sampleBox(n: number, budget: Budget, evaluate: (position: readonly number[]) => number, edgesUpTo: number): Sample[] {
   const samples: Sample[] = []
   const add = (position: number[]) => samples.push({ position, value: evaluate(position) })
   for (const corner of cornersOf(n)) add(corner)
   add(Array.from({ length: n }, () => 0.5))
-  if (n <= EDGES_UP_TO) for (const position of edgesOf(n, budget.edgePoints)) add(position)
+  if (n <= edgesUpTo) for (const position of edgesOf(n, budget.edgePoints)) add(position)
   for (let k = 1; k <= budget.inside; k += 1) add(additive(n, k))
   return samples
 }
