@@ -1,4 +1,5 @@
 /** Fingerprints of what the deterministic functions return, to the last bit. Runs in Node and in a browser alike. */
+import { createSheetEngine } from '../../../shared/engine'
 import * as complex from '../../../shared/engine/numeric/complex'
 import * as m from '../../../shared/engine/numeric/math'
 import { rootsOf } from '../../../shared/engine/numeric/roots'
@@ -107,7 +108,31 @@ function figureFingerprint(): string {
   return print.toString()
 }
 
-/** One fingerprint a function, and one each for complex arithmetic, roots and figures. */
+/** Every number of a tolerance analysis with all that moves a value. */
+function toleranceFingerprint(): string {
+  const engine = createSheetEngine({ significantDigits: 4 })
+  const lines = ['R = 50 ohm ± 1 %', 'L = 10 mH ± 5 %', 'C = between(100 nF, 80 nF, 110 nF)', 'C_2 = 100 nF ± 10 %', 'H(s) = 1/(L*C*s^2 + R*(C + C_2)*s + 1)']
+  engine.evaluate({ lines: lines.map((source, i) => ({ id: `l${i}`, source })), settings: { significantDigits: 4 } })
+  const run = engine.tolerance({
+    methods: ['worst case', 'root-sum-square', 'random'], seed: 2026, samples: 4000, temperature: { reference: 25, low: -40, high: 85 },
+    outputs: [{ id: 'a', source: '1/(2*pi*sqrt(L*C)) to Hz' }, { id: 'b', source: 'gain(H, 4 kHz) <= 4 dB' }],
+    inputs: [
+      { name: 'R', distribution: 'normal', coefficient: { low: -50, high: 50 } }, { name: 'L', distribution: 'truncated normal', sigmas: 2, coefficient: { low: 100, high: 300 } },
+      { name: 'C', distribution: 'normal', batch: 'film', ageing: { low: -3, high: 0 } }, { name: 'C_2', distribution: 'uniform', batch: 'film' },
+    ],
+  })
+  const print = new Fingerprint()
+  const visit = (part: unknown) => {
+    if (typeof part === 'number') print.add(part)
+    else if (typeof part === 'object' && part !== null) Object.values(part).forEach(visit)
+  }
+  let step = run.next()
+  while (!step.done) step = run.next()
+  visit(step.value)
+  return print.toString()
+}
+
+/** One fingerprint a function, and one each for complex arithmetic, roots, figures and a tolerance analysis. */
 export function fingerprints(): Record<string, string> {
   const unary = {
     sin: m.sin, cos: m.cos, tan: m.tan, asin: m.asin, acos: m.acos, atan: m.atan, exp: m.exp, expm1: m.expm1, ln: m.ln, log1p: m.log1p,
@@ -117,5 +142,5 @@ export function fingerprints(): Record<string, string> {
   const result: Record<string, string> = {}
   for (const [name, f] of Object.entries(unary)) result[name] = unaryFingerprint(f, 12_345)
   for (const [name, f] of Object.entries(binary)) result[name] = binaryFingerprint(f, 54_321)
-  return { ...result, complex: complexFingerprint(), roots: rootFingerprint(), figures: figureFingerprint() }
+  return { ...result, complex: complexFingerprint(), roots: rootFingerprint(), figures: figureFingerprint(), tolerance: toleranceFingerprint() }
 }

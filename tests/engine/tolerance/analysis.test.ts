@@ -1,29 +1,11 @@
 /** The three methods against values computed with SciPy (data/tolerance.json), closed forms and brute force. */
 import { describe, expect, it } from 'vitest'
 import { createSheetEngine } from '../../../shared/engine'
-import type { ToleranceOutput, ToleranceRequest, ToleranceResult } from '../../../shared/engine'
+import type { ToleranceRequest } from '../../../shared/engine'
 import { uniformAt } from '../../../shared/engine/numeric/chance'
 import data from '../data/tolerance.json'
 import { inputOf, settings } from '../language/support'
-
-const REQUEST: ToleranceRequest = { inputs: [], outputs: [], methods: ['worst case', 'root-sum-square', 'random'], seed: 1, samples: 100_000 }
-
-function analyse(lines: readonly string[], sources: readonly string[], more: Partial<ToleranceRequest> = {}): ToleranceResult {
-  const engine = createSheetEngine(settings)
-  engine.evaluate(inputOf(lines))
-  const run = engine.tolerance({ ...REQUEST, outputs: sources.map((source, i) => ({ id: `o${i}`, source })), ...more })
-  for (;;) {
-    const step = run.next()
-    if (step.done) return step.value
-  }
-}
-
-function output(lines: readonly string[], source: string, more: Partial<ToleranceRequest> = {}): ToleranceOutput {
-  const { problems, outputs } = analyse(lines, [source], more)
-  const [found] = outputs
-  if (!found) throw new Error(JSON.stringify(problems))
-  return found
-}
+import { analyse, output, REQUEST } from './analyse'
 
 function reference(start: string): unknown {
   const record = data.records.find(found => found.quantity.startsWith(start))
