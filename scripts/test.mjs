@@ -2,7 +2,7 @@
  * `npm test`: sets itself up as `npm start` does, with a database of its own, and runs everything.
  *
  *   npm test                    all parts; ends with the line `N passed, M failed`
- *   npm test -- api             one part: lint typecheck unit engine nuxt sheets api collab pdf access e2e
+ *   npm test -- api             one part: lint typecheck unit engine nuxt sheets circuits api collab pdf access e2e
  *   npm test -- api FILE …      what follows the name goes to that part, such as a file for vitest
  *
  * What needs neither server nor database runs beside the build; the parts that share the server's machine run one after another.

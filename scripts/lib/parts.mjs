@@ -57,6 +57,7 @@ export const PARTS = {
   engine: { run: vitest('engine') },
   nuxt: { run: vitest('nuxt') },
   sheets: { run: counted([TSX, 'scripts/check-sheets.ts', join(ROOT, 'tests/sheets')]) },
+  circuits: { run: counted([TSX, 'scripts/check-circuits.ts', join(ROOT, 'tests/circuits')]) },
   api: { served: true, run: vitest('api') },
   collab: { served: true, run: vitest('collab') },
   pdf: { served: true, run: vitest('pdf') },

@@ -68,3 +68,36 @@ describe('an edit', () => {
     expect(engine.edit('l1', 'b = 2 V').results().map(({ id, status }) => [id, status])).toEqual([['l1', 'ok'], ['l2', 'error'], ['l3', 'error'], ['l4', 'error']])
   })
 })
+
+describe('a further evaluation', () => {
+  /** Every line has a name of its own and may use those above. */
+  const rightOf = (index: number) => fc.oneof(
+    fc.integer({ min: 1, max: 99 }).map(n => `${n / 10} V`),
+    ...index === 0 ? [] : [fc.tuple(fc.nat(index - 1), fc.nat(index - 1), fc.constantFrom('2*x', 'x + y', 'x*y/(1 V)', 'x - y', 'x/(x - y)*(1 V)', 'x ± 5 %')).map(([x, y, form]) => form.replaceAll('x', `n_${x}`).replaceAll('y', `n_${y}`))],
+  )
+  const named = (index: number) => rightOf(index).map(value => `n_${index} = ${value}`)
+  const COUNT = 9
+  const start = fc.tuple(...Array.from({ length: COUNT }, (_, i) => named(i)))
+  const change = fc.nat(COUNT - 1).chain(index => named(index).map(source => ({ index, source })))
+
+  it('gives what a fresh one gives, whatever was changed and in whichever way', () => {
+    fc.assert(fc.property(start, fc.array(fc.tuple(change, fc.boolean()), { minLength: 1, maxLength: 6 }), (sources, changes) => {
+      const engine = createSheetEngine(settings)
+      engine.evaluate(asInput(sources))
+      const now: string[] = [...sources]
+      for (const [{ index, source }, edited] of changes) {
+        now[index] = source
+        if (edited) engine.edit(`l${index}`, source)
+        expect(seen(engine.evaluate(asInput(now)))).toEqual(seen(evaluateSheet(asInput(now))))
+      }
+    }), { numRuns: 300, seed: 20_261_201 })
+  }, 60_000)
+
+  it('leaves nothing behind where an edit met a line without a value half-way', () => {
+    const engine = createSheetEngine(settings)
+    engine.evaluate(asInput(['a = 2 V', 'b = 1 V', 'c = a/(a - b)*(1 V)', 'd = 2*a']))
+    engine.edit('l0', 'a = 1 V')
+    const now = asInput(['a = 1 V', 'b = 1 V', 'c = a/(a - b)*(1 V)', 'd = 2*a'])
+    expect(seen(engine.evaluate(now))).toEqual(seen(evaluateSheet(now)))
+  })
+})
