@@ -1,14 +1,15 @@
-"""Makes the cases of this folder, outside the project's own solver.
+"""Makes the cases of this folder and the golden file of random circuits, both outside the project's own solver.
 
-Modified nodal equations solved with mpmath at 50 digits; poles are the roots of det(G + sC), interpolated
-at 400 digits.
+Cases: modified nodal equations solved with mpmath at 50 digits; poles are the roots of det(G + sC), interpolated
+at 400 digits. Golden file: the AC analysis of ngspice on a hundred random circuits (fixed seed).
 
     python3 tests/circuits/make.py
 """
-import json, os
+import json, os, random, subprocess, tempfile
 import mpmath as mp
 
 HERE = os.path.dirname(os.path.abspath(__file__))
+GOLDEN = os.path.join(HERE, '..', 'engine', 'circuit', 'random-circuits.json')
 
 
 def equations(elements, source):
@@ -169,6 +170,95 @@ def cases():
     yield 'current-in-a-capacitor', 'current of the capacitor of a series circuit', [V('V1', 'in', '0'), R('R1', 'in', 'a', 4.7), L('L1', 'a', 'b', 1e-4), Cap('C1', 'b', '0', 1e-8)], 'V1', cur('C1'), grid(1e3, 1e7), 1e6
 
 
+def spice(elements, source, freqs):
+    """The netlist; `out` voltages are read from the raw file."""
+    lines = ['random']
+    for e in elements:
+        k, r, v = e['kind'], e['ref'], e.get('value')
+        n = ' '.join(e.get('nodes', []))
+        ac = '1' if r == source else '0'
+        if k in 'RC': lines.append('%s %s %.17g' % (r, n, v))
+        elif k == 'L':
+            lines.append('%s %s %s 0' % ('VS' + r, e['nodes'][0], 'x' + r))
+            lines.append('%s %s %s %.17g' % (r, 'x' + r, e['nodes'][1], v))
+        elif k in 'VI': lines.append('%s %s dc 0 ac %s' % (r, n, ac))
+        elif k == 'coupling': lines.append('%s %s %s %.17g' % (r, e['couples'][0], e['couples'][1], v))
+        elif k in ('vcvs', 'vccs'): lines.append('%s %s %s %.17g' % (r, n, ' '.join(e['ctrl_nodes']), v))
+        elif k in ('ccvs', 'cccs'): lines.append('%s %s %s %.17g' % (r, n, 'VS' + e['ctrl_ref'] if e['ctrl_ref'][0] == 'L' else e['ctrl_ref'], v))
+    return lines
+
+
+def ngspice(elements, source, node, lo, hi):
+    with tempfile.TemporaryDirectory() as d:
+        raw = os.path.join(d, 'out.raw')
+        text = spice(elements, source, None) + ['.control', 'set filetype=ascii', 'set numdgt=16', 'ac dec 2 %g %g' % (lo, hi), 'write %s v(%s)' % (raw, node), 'quit', '.endc', '.end']
+        open(os.path.join(d, 'n.cir'), 'w').write('\n'.join(text) + '\n')
+        subprocess.run(['ngspice', '-b', 'n.cir'], cwd=d, capture_output=True, timeout=30)
+        if not os.path.exists(raw): return None
+        values = open(raw).read().split('Values:')[1].split()
+    rows, k = [], 0
+    while k < len(values):
+        f, h = values[k + 1], values[k + 2]
+        rows.append((float(f.split(',')[0]), complex(*map(float, h.split(',')))))
+        k += 3
+    return rows
+
+
+def random_circuit(rng):
+    n = rng.randint(3, 9)
+    names = ['n%d' % k for k in range(1, n + 1)]
+    value = dict(R=lambda: 10 ** rng.uniform(1, 5), L=lambda: 10 ** rng.uniform(-6, -2), C=lambda: 10 ** rng.uniform(-11, -6))
+    es = [V('V1', 'n1', '0') if rng.random() < 0.7 else I('I1', '0', 'n1'), R('R0', 'n1', '0', value['R']())]
+    count = dict(R=0, L=0, C=0, E=0, G=0, F=0, H=0)
+
+    def two(kind, a, b):
+        count[kind] += 1
+        es.append(dict(ref='%s%d' % (kind, count[kind]), kind=kind, nodes=[a, b], value=float('%.4g' % value[kind]())))
+
+    for k in range(1, n):
+        two('R', names[k], rng.choice(names[:k] + ['0']))
+    for _ in range(rng.randint(2, n + 3)):
+        a, b = rng.sample(names + ['0'], 2)
+        two(rng.choice('RLCC'), a, b)
+    coils = [e['ref'] for e in es if e['kind'] == 'L']
+    if len(coils) > 1 and rng.random() < 0.6:
+        es.append(dict(ref='K1', kind='coupling', couples=coils[:2], value=round(rng.uniform(-0.95, 0.95), 3)))
+    for _ in range(rng.randint(0, 2)):
+        kind = rng.choice(['vccs', 'cccs', 'vcvs', 'ccvs'])
+        a, b = rng.sample(names[1:] + ['0'], 2)
+        sensed = coils + (['V1'] if es[0]['kind'] == 'V' else [])
+        if kind in ('vccs', 'vcvs'):
+            c = rng.sample(names + ['0'], 2)
+            letter = 'G' if kind == 'vccs' else 'E'
+            count[letter] += 1
+            target = [a, b]
+            if kind == 'vcvs':
+                target = ['e%d' % count['E'], '0']
+                es.append(R('RE%d' % count['E'], target[0], a if a != '0' else b, 10 ** rng.uniform(1, 4)))
+            es.append(dict(ref='%s%d' % (letter, count[letter]), kind=kind, nodes=target, ctrl_nodes=c, value=round(rng.uniform(-2, 2), 3) * (1e-3 if kind == 'vccs' else 1)))
+        elif sensed:
+            letter = 'F' if kind == 'cccs' else 'H'
+            count[letter] += 1
+            target = [a, b]
+            if kind == 'ccvs':
+                target = ['h%d' % count['H'], '0']
+                es.append(R('RH%d' % count['H'], target[0], a if a != '0' else b, 10 ** rng.uniform(1, 4)))
+            es.append(dict(ref='%s%d' % (letter, count[letter]), kind=kind, nodes=target, ctrl_ref=rng.choice(sensed), value=round(rng.uniform(-2, 2), 3) * (100 if kind == 'ccvs' else 1)))
+    return es, es[0]['ref'], names[-1]
+
+
+def golden():
+    rng, rows, seed = random.Random(20261201), [], 0
+    while len(rows) < 100:
+        es, source, node = random_circuit(rng)
+        found = ngspice(es, source, node, 100, 1e7)
+        if not found or max(abs(h) for _, h in found) < 1e-9 or any(h != h for _, h in found): continue
+        rows.append(dict(elements=es, input=source, output=out(node), freqs_Hz=[f for f, _ in found], H_re=[h.real for _, h in found], H_im=[h.imag for _, h in found]))
+    head = dict(source='ngspice AC analysis, tests/circuits/make.py, seed 20261201')
+    with open(GOLDEN, 'w') as file:
+        file.write('{"source":%s,"circuits":[\n' % json.dumps(head['source']) + ',\n'.join(json.dumps(r, separators=(',', ':')) for r in rows) + '\n]}\n')
+
+
 if __name__ == '__main__':
     for name, text, es, source, output, freqs, rate in cases():
         H = response(es, source, output, freqs)
@@ -176,3 +266,4 @@ if __name__ == '__main__':
                     freqs_Hz=freqs, H_re=[float(mp.re(h)) for h in H], H_im=[float(mp.im(h)) for h in H], poles_rad_s=poles(es, rate), tolerance=dict(H=1e-8, poles=1e-7))
         with open(os.path.join(HERE, name + '.json'), 'w') as file:
             file.write(json.dumps(case, indent=None, separators=(',', ':')).replace('"elements":', '\n"elements":').replace('"freqs_Hz":', '\n"freqs_Hz":').replace('"H_re":', '\n"H_re":').replace('"poles_rad_s":', '\n"poles_rad_s":') + '\n')
+    golden()
